@@ -1,0 +1,134 @@
+package kind
+
+import (
+	"fmt"
+	"math"
+
+	"saddlebook/content/fault"
+	"saddlebook/content/schema"
+	"saddlebook/kinetics"
+	"saddlebook/kinetics/unit"
+)
+
+// chargeField is the field of what is charged, for every kind that has one.
+func chargeField(doc string, required bool) schema.Field {
+	return schema.Field{Key: "charge", Doc: doc, Type: schema.AmountsByName, Dims: []unit.Dim{unit.Concentration, unit.Equivalent},
+		Required: required, Wants: "species", Example: `{ R = "0.20 M", X = "1.1 equiv" }`}
+}
+
+var basisField = schema.Field{Key: "basis", Doc: "the species that equiv and mol% refer to", Type: schema.Text, Wants: "species", Example: "R"}
+
+var atField = schema.Field{Key: "at", Doc: "the temperatures", Type: schema.Amounts, Dims: []unit.Dim{unit.Temperature},
+	Default: "the mechanism's own temperature", Example: `["-78 °C", "25 °C"]`}
+
+var usesMechanism = schema.Field{Key: "mechanism", Doc: "the mechanism it speaks of: its id, or note#id in another note", Type: schema.Text,
+	Required: true, Wants: "mechanism", Example: "addition"}
+
+// mechanismRef is the dependence of a block on the mechanism it names.
+func mechanismRef(target string) []Ref {
+	return []Ref{{Target: target, Kinds: []string{"mechanism"}, Path: []string{"mechanism"}}}
+}
+
+// concentrations turns a charge into mol/L by species; NaN where nothing is stated.
+func concentrations(m *kinetics.Mechanism, charge []schema.NamedAmount, basis string) ([]float64, fault.Problems) {
+	var ps fault.Problems
+	c := make([]float64, len(m.Species))
+	for i := range c {
+		c[i] = math.NaN()
+	}
+	base := math.NaN()
+	if basis != "" {
+		if speciesIndex(m, basis) < 0 {
+			ps = append(ps, unknownSpecies(m, basis, []string{"basis"}))
+		}
+		for _, a := range charge {
+			if a.Name == basis && a.Quantity.Unit.Dim == unit.Concentration {
+				base = a.Quantity.SI
+			}
+		}
+		if math.IsNaN(base) && len(ps) == 0 {
+			ps = append(ps, problem([]string{"basis"}, fmt.Sprintf("%q has no concentration in the charge", basis), "charge it, such as "+basis+" = \"0.20 M\""))
+		}
+	}
+	for _, a := range charge {
+		path := []string{"charge", a.Name}
+		i := speciesIndex(m, a.Name)
+		switch {
+		case i < 0:
+			ps = append(ps, unknownSpecies(m, a.Name, path))
+		case a.Quantity.SI < 0:
+			ps = append(ps, problem(path, fmt.Sprintf("%s is negative", a.Quantity), "charge 0 or more"))
+		case a.Quantity.SD != 0:
+			ps = append(ps, problem(path, fmt.Sprintf("the ± of %s is not carried on", a.Quantity), "leave out the ±"))
+		case a.Quantity.Unit.Dim == unit.Equivalent && basis == "":
+			ps = append(ps, problem(path, fmt.Sprintf("%s has no basis", a.Quantity), "add basis = \"NAME\", the species that equiv and mol% refer to"))
+		case a.Quantity.Unit.Dim == unit.Equivalent:
+			c[i] = a.Quantity.SI * base
+		default:
+			c[i] = a.Quantity.SI
+		}
+	}
+	return c, ps
+}
+
+func speciesIndex(m *kinetics.Mechanism, name string) int {
+	for i, s := range m.Species {
+		if s.Name == name {
+			return i
+		}
+	}
+	return -1
+}
+
+func unknownSpecies(m *kinetics.Mechanism, name string, path []string) *fault.Problem {
+	return problem(path, fmt.Sprintf("%q is not a species of mechanism %q", name, m.ID), suggest(name, m.States()[:len(m.Species)]))
+}
+
+// groupsOf turns named sums of products into species indices.
+func groupsOf(m *kinetics.Mechanism, groups []schema.Group, key string) ([][]int, fault.Problems) {
+	var ps fault.Problems
+	owner := map[string]string{}
+	out := make([][]int, len(groups))
+	for g, group := range groups {
+		for _, name := range group.Members {
+			i := speciesIndex(m, name)
+			if i < 0 {
+				ps = append(ps, unknownSpecies(m, name, []string{key, group.Name}))
+				continue
+			}
+			if other, twice := owner[name]; twice {
+				ps = append(ps, problem([]string{key, group.Name}, fmt.Sprintf("%q is counted in %q already", name, other), "name each species once"))
+			}
+			owner[name] = group.Name
+			out[g] = append(out[g], i)
+		}
+	}
+	return out, ps
+}
+
+// atOr returns the temperatures asked for, or the mechanism's own.
+func atOr(at []unit.Quantity, m *kinetics.Mechanism) []unit.Quantity {
+	if len(at) > 0 {
+		return at
+	}
+	return []unit.Quantity{{SI: m.Temperature, Unit: unit.Must("°C")}}
+}
+
+func kelvins(at []unit.Quantity) []float64 {
+	out := make([]float64, len(at))
+	for i, q := range at {
+		out[i] = q.SI
+	}
+	return out
+}
+
+// ratioNumber is a over b; an infinite or undefined one is nothing, with words in its place.
+func ratioNumber(a, b float64) Number {
+	switch {
+	case a == 0 && b == 0:
+		return Number{Kind: Nothing, Text: "neither forms"}
+	case b == 0:
+		return Number{Kind: Nothing, Text: "only the first forms"}
+	}
+	return Value(a/b, "beyond any number")
+}

@@ -1,0 +1,30 @@
+package kind_test
+
+import "testing"
+
+// Levels are completed by spectators: after R + X has become A, a path that
+// goes on without X still compares.
+func TestProfileLevels(t *testing.T) {
+	s := good(t, "# T\n\n```toml mechanism\n"+`id = "m"
+temperature = "25 °C"
+[species]
+R = { G = 0 }
+I = { G = 4 }
+X = { G = 1 }
+A = { G = -5 }
+[step]
+T1 = { reaction = "R <=> I", G = 12 }
+T2 = { reaction = "I + X <=> A", G = 16 }
+`+"```\n\n```toml profile\n"+`id = "hills"
+mechanism = "m"
+path = [{ through = ["R", "T1", "I", "T2", "A"] }]
+zero = "R + X"
+`+"```\n", nil)
+	for state, kcal := range map[string]float64{"R": 0, "T1": 12, "I": 4, "T2": 15, "A": -6} {
+		got := value(t, s, "hills/level/"+state)
+		want := kcal * 1000 * calorie
+		if got != want && (got-want > 1e-6 || want-got > 1e-6) {
+			t.Errorf("level of %s is %g J/mol, want %g", state, got, want)
+		}
+	}
+}

@@ -1,0 +1,270 @@
+package kind
+
+import (
+	"context"
+	"fmt"
+	"math"
+
+	"saddlebook/content/fault"
+	"saddlebook/content/schema"
+	"saddlebook/kinetics"
+	"saddlebook/kinetics/unit"
+)
+
+func init() {
+	Register(Kind[selectivitySource, selectivityValue]{
+		Name:    "selectivity",
+		Doc:     "Which product forms, at the kinetic limit and at equilibrium, at one or more temperatures.",
+		Version: 1,
+		Fields: []schema.Field{
+			{Key: "id", Doc: "the name by which readings and claims call this block", Type: schema.Text, Required: true, Example: "limits"},
+			usesMechanism,
+			{Key: "from", Doc: "the species whose fate is followed", Type: schema.Text, Required: true, Wants: "species", Example: "R"},
+			{Key: "products", Doc: "the products to compare; a product may be a sum of species", Type: schema.Groups, Required: true, Wants: "species", Example: `["A", "B"]`},
+			atField,
+			chargeField("concentrations of the other species, where they matter", false),
+			basisField,
+			{Key: "caption", Doc: "what the table shows", Type: schema.Text, Example: "Limits of control"},
+		},
+		ID:    func(s *selectivitySource) string { return s.ID },
+		Refs:  func(s *selectivitySource) []Ref { return mechanismRef(s.Mechanism) },
+		Check: (*selectivitySource).check,
+		Compute: func(_ context.Context, s *selectivitySource, in Inputs) (selectivityValue, error) {
+			return s.compute(in)
+		},
+		Results: (*selectivitySource).results,
+		Gives: []Gift{
+			{"kinetic/PRODUCT@T", "share of the product at the kinetic limit, among the listed ones"},
+			{"kinetic-ratio/A:B@T", "A over B at the kinetic limit"},
+			{"pre-equilibrium-ratio/A:B@T", "A over B if exchange before the products were infinitely fast"},
+			{"fast-exchange@T", "whether the two ratios above agree within 5 %: holds, does not hold, or nothing to exchange"},
+			{"equilibrium/PRODUCT@T", "share of the product at equilibrium, among the listed ones"},
+			{"equilibrium-ratio/A:B@T", "A over B at equilibrium"},
+		},
+		Present: (*selectivitySource).present,
+		Sampler: func(ctx context.Context, s *selectivitySource, in Inputs) (Sampler, error) {
+			m, err := in.Mechanism(s.Mechanism)
+			if err != nil {
+				return Sampler{}, err
+			}
+			return Sampler{Mechanism: m, Temperatures: kelvins(atOr(s.At, m)), Results: func(m *kinetics.Mechanism) ([]Result, error) {
+				v, err := s.limits(m)
+				return s.results(v), err
+			}}, nil
+		},
+	})
+}
+
+type selectivitySource struct {
+	ID        string               `key:"id"`
+	Mechanism string               `key:"mechanism"`
+	From      string               `key:"from"`
+	Products  []schema.Group       `key:"products"`
+	At        []unit.Quantity      `key:"at"`
+	Charge    []schema.NamedAmount `key:"charge"`
+	Basis     string               `key:"basis"`
+	Caption   string               `key:"caption"`
+}
+
+type selectivityValue struct {
+	At []limitsValue
+}
+
+type limitsValue struct {
+	T               unit.Quantity
+	Kinetic         []float64 // by product, as shares of the listed ones
+	PreEquilibrium  []float64
+	Sources         int // states that products form from
+	Fast            bool
+	Elsewhere       float64
+	Equilibrium     []float64 // empty: not reachable, or not computable
+	WhyNot          string
+	NoExchange      string // why there is no ratio for infinitely fast exchange
+	Assumes, Caveat []string
+}
+
+func (s *selectivitySource) check() fault.Problems {
+	if len(s.Products) < 2 {
+		return fault.Problems{problem([]string{"products"}, "fewer than two products are listed", "list the products to compare, such as [\"A\", \"B\"]")}
+	}
+	return nil
+}
+
+func (s *selectivitySource) compute(in Inputs) (selectivityValue, error) {
+	m, err := in.Mechanism(s.Mechanism)
+	if err != nil {
+		return selectivityValue{}, err
+	}
+	return s.limits(m)
+}
+
+// limits computes both limits at every temperature.
+func (s *selectivitySource) limits(m *kinetics.Mechanism) (selectivityValue, error) {
+	var v selectivityValue
+	groups, ps := groupsOf(m, s.Products, "products")
+	held, more := concentrations(m, s.Charge, s.Basis)
+	ps = append(ps, more...)
+	from := speciesIndex(m, s.From)
+	if from < 0 {
+		ps = append(ps, unknownSpecies(m, s.From, []string{"from"}))
+	}
+	if len(ps) > 0 {
+		return v, ps
+	}
+	var products []int
+	for _, g := range groups {
+		products = append(products, g...)
+	}
+	for _, T := range atOr(s.At, m) {
+		n, err := m.At(T.SI)
+		if err != nil {
+			return v, asProblems(err, "")
+		}
+		lim, err := n.KineticLimit(kinetics.Limit{From: from, Products: products, Held: held})
+		if err != nil {
+			return v, asProblems(err, "")
+		}
+		row := limitsValue{T: T, Fast: lim.FastExchange, Sources: lim.Sources, Elsewhere: lim.Elsewhere, Assumes: m.Held(T.SI), Caveat: lim.Assumes}
+		row.Kinetic = shareOut(groups, products, lim.Shares)
+		row.PreEquilibrium = shareOut(groups, products, lim.PreEquilibrium)
+		row.NoExchange = lim.NoExchange
+		row.Equilibrium, row.WhyNot, err = equilibriumShares(n, groups, products, held, len(s.Charge) > 0)
+		if err != nil {
+			return v, asProblems(err, "")
+		}
+		v.At = append(v.At, row)
+	}
+	return v, nil
+}
+
+// shareOut sums values over groups and divides by the total. It is nil when
+// there is nothing to share.
+func shareOut(groups [][]int, products []int, values []float64) []float64 {
+	if len(values) == 0 {
+		return nil
+	}
+	at := map[int]float64{}
+	for i, p := range products {
+		at[p] = values[i]
+	}
+	out, total := make([]float64, len(groups)), 0.0
+	for g, members := range groups {
+		for _, p := range members {
+			out[g] += at[p]
+		}
+		total += out[g]
+	}
+	if total == 0 {
+		return nil
+	}
+	for g := range out {
+		out[g] /= total
+	}
+	return out
+}
+
+// equilibriumShares compares the products at equilibrium, without a charge
+// where their ratio does not depend on one.
+func equilibriumShares(n *kinetics.Network, groups [][]int, products []int, held []float64, charged bool) ([]float64, string, error) {
+	for _, p := range products {
+		if n.Drained(p) {
+			return nil, "equilibrium is not reachable: a step without return drains " + n.Names[p], nil
+		}
+	}
+	values := make([]float64, len(products))
+	free := true
+	for i, p := range products {
+		r, ok := n.EquilibriumRatio(p, products[0])
+		free = free && ok
+		values[i] = r
+	}
+	if free {
+		return shareOut(groups, products, values), "", nil
+	}
+	for _, r := range n.Reactions {
+		for _, p := range products {
+			if !r.Returns && makes(r, p) {
+				return nil, fmt.Sprintf("equilibrium is not reachable: %s forms by a step without return", n.Names[p]), nil
+			}
+		}
+	}
+	if !charged {
+		return nil, "the ratio at equilibrium depends on the charge: state one", nil
+	}
+	start := make([]float64, len(held))
+	for i, c := range held {
+		if !math.IsNaN(c) {
+			start[i] = c
+		}
+	}
+	eq, err := n.Equilibrium(start)
+	if err != nil {
+		return nil, "", err
+	}
+	for i, p := range products {
+		values[i] = eq.C[p]
+	}
+	return shareOut(groups, products, values), "", nil
+}
+
+// makes tells whether a step has the species among its products.
+func makes(r kinetics.Reaction, species int) bool {
+	for _, t := range r.To {
+		if t.Species == species {
+			return true
+		}
+	}
+	return false
+}
+
+// exchange words whether fast exchange holds.
+func (row limitsValue) exchange() string {
+	switch {
+	case row.NoExchange != "":
+		return "not defined: " + row.NoExchange
+	case row.Sources == 1:
+		return "nothing to exchange"
+	case row.Fast:
+		return "holds"
+	}
+	return "does not hold"
+}
+
+func (s *selectivitySource) results(v selectivityValue) []Result {
+	var out []Result
+	for _, row := range v.At {
+		condition := ConditionText(row.T)
+		key := func(quantity, item string) Key {
+			return Key{ID: s.ID, Quantity: quantity, Item: item, Condition: condition}
+		}
+		assumes := append(append([]string{}, row.Assumes...), row.Caveat...)
+		shares := func(quantity string, x []float64) {
+			for g, group := range s.Products {
+				if len(x) > 0 {
+					out = append(out, Result{Key: key(quantity, group.Name), Value: Value(x[g], "none"), Unit: unit.Must("%"), Form: unit.FormPercent, Assumes: assumes})
+				} else {
+					out = append(out, Result{Key: key(quantity, group.Name), Value: Number{Kind: Nothing, Text: or(row.WhyNot, "none")}, Unit: unit.Must("%"), Form: unit.FormPercent, Assumes: assumes})
+				}
+			}
+		}
+		ratios := func(quantity string, x []float64, why string) {
+			for a := range s.Products {
+				for b := a + 1; b < len(s.Products); b++ {
+					n := Number{Kind: Nothing, Text: or(why, "none")}
+					if len(x) > 0 {
+						n = ratioNumber(x[a], x[b])
+					}
+					out = append(out, Result{Key: key(quantity, s.Products[a].Name+":"+s.Products[b].Name), Value: n, Unit: unit.Unit{Scale: 1}, Form: unit.FormRatio, Assumes: assumes})
+				}
+			}
+		}
+		shares("kinetic", row.Kinetic)
+		ratios("kinetic-ratio", row.Kinetic, "")
+		ratios("pre-equilibrium-ratio", row.PreEquilibrium, row.NoExchange)
+		fast := row.exchange()
+		out = append(out, Result{Key: key("fast-exchange", ""), Value: Number{Kind: Words, Text: fast}, Assumes: assumes})
+		shares("equilibrium", row.Equilibrium)
+		ratios("equilibrium-ratio", row.Equilibrium, row.WhyNot)
+	}
+	return out
+}

@@ -1,0 +1,32 @@
+package study
+
+import (
+	"fmt"
+
+	"saddlebook/content/fault"
+	"saddlebook/render/kind"
+)
+
+// Findings are the conclusions of a block with their standing; none if it was
+// not computed.
+func (b *Block) Findings() []kind.Finding {
+	if !b.Done {
+		return nil
+	}
+	return b.Kind.Findings(b.Spec, b.Value)
+}
+
+// FindingFault words a conclusion that does not hold, at its place.
+func (b *Block) FindingFault(f kind.Finding) fault.Diagnostic {
+	msg := fmt.Sprintf("claim %q %s: %s is %s, and the claim wants %s", f.Says, f.Standing, f.Reading, f.Value, f.Bound)
+	fix := "change the claim, or what it rests on"
+	if f.Standing == kind.Undecided {
+		msg = fmt.Sprintf("claim %q is undecided: %s", f.Says, f.Why)
+		fix = "give the energies it names a ±, narrow them, or ask for less"
+	}
+	severity := fault.Error
+	if f.Standing == kind.Undecided {
+		severity = fault.Warning
+	}
+	return b.diagnose(&fault.Problem{Path: f.Path, Severity: severity, Msg: msg, Fix: fix})
+}
