@@ -1,0 +1,77 @@
+// Command saddlebook publishes notebooks of reaction mechanisms: Markdown
+// notes whose numbers are computed from the blocks they show.
+package main
+
+import (
+	"context"
+	"errors"
+	"fmt"
+	"io"
+	"os"
+	"os/signal"
+	"syscall"
+
+	"github.com/spf13/cobra"
+)
+
+// Exit statuses, as the reference of the command line states them.
+const (
+	good         = 0
+	claimFails   = 1 // a claim does not hold
+	sourceWrong  = 2 // a source is wrong; nothing is written
+	machineFails = 3 // disk, port, git
+	lineWrong    = 4 // a wrong command line
+)
+
+// status is an error that carries its exit status. An empty text prints nothing.
+type status struct {
+	code int
+	text string
+}
+
+func (s status) Error() string { return s.text }
+
+func main() { os.Exit(run(os.Args[1:], os.Stdout, os.Stderr)) }
+
+// run is the whole program but for the process itself.
+func run(args []string, out, errs io.Writer) int {
+	ctx, stop := signal.NotifyContext(context.Background(), os.Interrupt, syscall.SIGTERM)
+	defer stop()
+	root := rootCommand(out, errs)
+	root.SetArgs(args)
+	err := root.ExecuteContext(ctx)
+	var s status
+	switch {
+	case err == nil:
+		return good
+	case errors.As(err, &s):
+		if s.text != "" {
+			fmt.Fprintln(errs, "saddlebook: "+s.text)
+		}
+		return s.code
+	case ctx.Err() != nil:
+		fmt.Fprintln(errs, "saddlebook: interrupted; nothing was written")
+		return machineFails
+	}
+	fmt.Fprintln(errs, "saddlebook: "+err.Error())
+	return lineWrong
+}
+
+func rootCommand(out, errs io.Writer) *cobra.Command {
+	root := &cobra.Command{
+		Use:   "saddlebook",
+		Short: "Mechanism reports from notes whose numbers are computed",
+		Long: `Saddlebook turns a folder of Markdown notes with TOML blocks into pages whose
+every number is computed from the block it stands by, and checks every stated
+conclusion again each time anything changes.
+
+Exit status: 0 good; 1 a claim does not hold; 2 a source is wrong and nothing
+is written; 3 the machine failed (disk, port, git); 4 a wrong command line.`,
+		SilenceErrors: true,
+		SilenceUsage:  true,
+	}
+	root.SetOut(out)
+	root.SetErr(errs)
+	root.AddCommand(publishCommand(), auditCommand(), resultsCommand(), drawCommand(), referenceCommand(), beginCommand())
+	return root
+}

@@ -1,0 +1,133 @@
+// Package render turns a notebook into a site, checks it, and lists its
+// results. It conducts: content reads, kinetics computes through the block
+// kinds, diagram draws, themes dress, site writes.
+package render
+
+import (
+	"context"
+	"errors"
+	"fmt"
+	"io/fs"
+	"os"
+	"path/filepath"
+	"runtime"
+
+	"saddlebook/content"
+	"saddlebook/content/fault"
+	"saddlebook/render/study"
+)
+
+// A Source is where a notebook is read from.
+type Source struct {
+	FS       fs.FS
+	Name     string // as diagnostics name it; "" for the current folder
+	Folder   string // "" for the embedded notebook
+	Only     string // a note within it, when one was named
+	Embedded bool
+}
+
+// ErrNoNotebook says that a named folder holds no notebook.
+var ErrNoNotebook = errors.New("no saddlebook.toml here or in a parent folder")
+
+// Locate finds the notebook of a path: the folder or its nearest parent that
+// holds saddlebook.toml. An empty path means the current folder, and without a
+// notebook there, the embedded one.
+func Locate(name string) (Source, error) {
+	start := name
+	if start == "" {
+		start = "."
+	}
+	info, err := os.Stat(start)
+	if err != nil {
+		return Source{}, err
+	}
+	dir := start
+	if !info.IsDir() {
+		dir = filepath.Dir(start)
+	}
+	for up := dir; ; up = filepath.Join(up, "..") {
+		if _, err := os.Stat(filepath.Join(up, "saddlebook.toml")); err == nil {
+			return at(up, start, info.IsDir())
+		}
+		here, err := filepath.Abs(up)
+		if err != nil {
+			return Source{}, err
+		}
+		if filepath.Dir(here) == here {
+			break
+		}
+	}
+	if name == "" {
+		return Source{FS: content.Demo(), Name: "demo", Embedded: true}, nil
+	}
+	return Source{}, fmt.Errorf("%s: %w; name a folder that holds one, or make one with: saddlebook begin DIR", name, ErrNoNotebook)
+}
+
+func at(folder, named string, isDir bool) (Source, error) {
+	folder = filepath.Clean(folder)
+	src := Source{FS: os.DirFS(folder), Folder: folder, Name: filepath.ToSlash(folder)}
+	if src.Name == "." {
+		src.Name = ""
+	}
+	if !isDir {
+		a, err := filepath.Abs(folder)
+		if err != nil {
+			return src, err
+		}
+		b, err := filepath.Abs(named)
+		if err != nil {
+			return src, err
+		}
+		rel, err := filepath.Rel(a, b)
+		if err != nil {
+			return src, err
+		}
+		src.Only = filepath.ToSlash(rel)
+	}
+	return src, nil
+}
+
+// Options steer an evaluation.
+type Options struct {
+	Jobs     int  // 0: one for each processor
+	Fresh    bool // leave the cache alone
+	Progress func(done, total int)
+}
+
+// open reads and evaluates a notebook. The study is there whenever the error is nil.
+func open(ctx context.Context, src Source, o Options) (*study.Study, fault.List, error) {
+	book, faults := content.Open(src.FS, src.Name)
+	jobs := o.Jobs
+	if jobs <= 0 {
+		jobs = runtime.NumCPU()
+	}
+	so := study.Options{Jobs: jobs, Progress: o.Progress}
+	if !o.Fresh {
+		if dir := cacheFolder(); dir != "" {
+			so.Cache = study.Folder{Path: dir}
+		}
+	}
+	s, more, err := study.Run(ctx, book, so)
+	if err != nil {
+		return nil, nil, err
+	}
+	faults = append(faults, more...)
+	faults.Sort()
+	return s, faults, nil
+}
+
+// cacheFolder is SADDLEBOOK_CACHE, or a folder in the user's cache; "" when
+// there is neither, or when SADDLEBOOK_CACHE is "off".
+func cacheFolder() string {
+	if dir, ok := os.LookupEnv("SADDLEBOOK_CACHE"); ok {
+		if dir == "off" {
+			return ""
+		}
+		return dir
+	}
+	dir, err := os.UserCacheDir()
+	if err != nil {
+		return ""
+	}
+	return filepath.Join(dir, "saddlebook")
+}
