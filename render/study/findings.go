@@ -21,8 +21,12 @@ func (b *Block) FindingFault(f kind.Finding) fault.Diagnostic {
 	msg := fmt.Sprintf("claim %q %s: %s is %s, and the claim wants %s", f.Says, f.Standing, f.Reading, f.Value, f.Bound)
 	fix := "change the claim, or what it rests on"
 	if f.Standing == kind.Undecided {
-		msg = fmt.Sprintf("claim %q is undecided: %s", f.Says, f.Why)
-		fix = "give the energies it names a ±, narrow them, or ask for less"
+		msg = fmt.Sprintf("claim %q is undecided: it asks for a probability of %s", f.Says, f.Asked)
+		if f.Probability != "" {
+			msg += " and has " + f.Probability
+		}
+		msg += " (" + f.Why + ")"
+		fix = "give every energy behind it a ±, narrow the widest, or ask for less"
 	}
 	severity := fault.Error
 	if f.Standing == kind.Undecided {
