@@ -1,0 +1,106 @@
+package kind_test
+
+import (
+	"strings"
+	"testing"
+
+	"saddlebook/render/kind"
+	"saddlebook/render/study"
+)
+
+func findings(t *testing.T, s *study.Study) []kind.Finding {
+	t.Helper()
+	for _, b := range s.Blocks {
+		if b.Kind.Name == "claims" {
+			return b.Findings()
+		}
+	}
+	t.Fatal("no claims block")
+	return nil
+}
+
+func claim(lines string) string {
+	return addition + limits + "\n```toml claims\n[[claim]]\nsays = \"It holds.\"\n" + lines + "\n```\n"
+}
+
+// The kinetic ratio at -78 °C is 21.7:1, as the design states for this mechanism.
+func TestClaimsStanding(t *testing.T) {
+	sd := strings.NewReplacer("H = 9.0,", `H = "9.0 ± 0.3",`, "H = 9.9,", `H = "9.9 ± 0.3",`)
+	for _, tt := range []struct {
+		name, lines string
+		uncertain   bool
+		want        kind.Standing
+		value       string
+	}{
+		{"holds", `reading = "limits/kinetic-ratio/A:B@-78 °C"` + "\n" + `at-least = "15:1"`, false, kind.Holds, "21.7:1"},
+		{"fails", `reading = "limits/kinetic-ratio/A:B@-78 °C"` + "\n" + `at-least = "25:1"`, false, kind.Fails, "21.7:1"},
+		{"fails above", `reading = "limits/kinetic-ratio/A:B@-78 °C"` + "\n" + `at-most = "15:1"`, false, kind.Fails, "21.7:1"},
+		{"in hundreds", `reading = "limits/kinetic-ratio/A:B@-78 °C"` + "\n" + `at-least = "95:5"`, false, kind.Holds, "96:4"},
+		{"within", `reading = "limits/kinetic/A@-78 °C"` + "\n" + `at-least = "95 %"` + "\nat-most = \"96 %\"", false, kind.Holds, "95.6\u00a0%"},
+		{"in another unit", `reading = "addition/barrier/TSa"` + "\n" + `at-most = "60 kJ/mol"`, false, kind.Holds, "57.7\u00a0kJ/mol"},
+		{"probability, no ±", `reading = "limits/kinetic-ratio/A:B@-78 °C"` + "\nat-least = \"15:1\"\nprobability = 0.9", false, kind.Undecided, "21.7:1"},
+		{"probability short", `reading = "limits/kinetic-ratio/A:B@-78 °C"` + "\nat-least = \"15:1\"\nprobability = 0.9", true, kind.Undecided, "21.7:1"},
+		{"probable", `reading = "limits/kinetic-ratio/A:B@-78 °C"` + "\nat-least = \"1:1\"\nprobability = 0.9", true, kind.Holds, "21.7:1"},
+		{"improbable and failing", `reading = "limits/kinetic-ratio/A:B@-78 °C"` + "\nat-least = \"1000:1\"\nprobability = 0.9", true, kind.Fails, "21.7:1"},
+		{"rests on an exact energy", `reading = "limits/equilibrium-ratio/A:B@-78 °C"` + "\nat-most = \"1:1\"\nprobability = 0.9", true, kind.Undecided, ""},
+	} {
+		t.Run(tt.name, func(t *testing.T) {
+			note := claim(tt.lines)
+			if tt.uncertain {
+				note = sd.Replace(note)
+			}
+			f := findings(t, good(t, note, nil))[0]
+			if f.Standing != tt.want {
+				t.Errorf("%s: %s (%s), want %s", f.Standing, f.Value, f.Why, tt.want)
+			}
+			if tt.value != "" && f.Value != tt.value {
+				t.Errorf("value %q, want %q", f.Value, tt.value)
+			}
+			if tt.uncertain && f.Probability == "" {
+				t.Error("no probability, though energies have a ±")
+			}
+			if f.Standing == kind.Undecided && f.Why == "" {
+				t.Error("undecided, and the page does not say why")
+			}
+		})
+	}
+}
+
+// The probability of a bound on a ratio of two steps, against the normal
+// distribution: with 0.3 kcal/mol on each, independent, ln(21.7/15) lies 0.337
+// standard deviations above the bound, which has a probability of 63 %.
+// Correlated at 0.9 it is 86 %; the less favourable one counts.
+func TestClaimProbability(t *testing.T) {
+	note := strings.NewReplacer("H = 9.0,", `H = "9.0 ± 0.3",`, "H = 9.9,", `H = "9.9 ± 0.3",`).Replace(
+		claim(`reading = "limits/kinetic-ratio/A:B@-78 °C"` + "\nat-least = \"15:1\""))
+	f := findings(t, good(t, note, nil))[0]
+	if f.Probability != "63 %" && f.Probability != "64 %" {
+		t.Errorf("probability %q (%s)", f.Probability, f.Why)
+	}
+	if f.Standing != kind.Holds || !strings.Contains(f.Why, "independent") {
+		t.Errorf("%s, %q: want the less favourable sampling", f.Standing, f.Why)
+	}
+}
+
+func TestClaimFaults(t *testing.T) {
+	for _, tt := range []struct{ name, lines, want string }{
+		{"no bound", `reading = "limits/kinetic/A"`, "the claim has no bound"},
+		{"no such result", "reading = \"limits/kinetik/A\"\nat-least = 0.5", `did you mean the quantity "kinetic"?`},
+		{"no such block", "reading = \"limit/kinetic/A\"\nat-least = 0.5", `did you mean "limits"?`},
+		{"wrong unit", "reading = \"limits/kinetic/A\"\nat-least = \"5 kcal/mol\"", "write a value in %"},
+		{"no unit", "reading = \"addition/barrier/TSa\"\nat-least = 5", "write its unit"},
+		{"a word", "reading = \"addition/character/TSa\"\nat-least = 5", "a word has no bounds"},
+		{"ratio for a share", "reading = \"limits/kinetic/A\"\nat-least = \"15:1\"", "write a number"},
+		{"empty range", "reading = \"limits/kinetic/A\"\nat-least = 0.9\nat-most = 0.1", "no value is at least"},
+		{"probability", "reading = \"limits/kinetic/A\"\nat-least = 0.1\nprobability = 90", "probability 90 is not between 0 and 1"},
+	} {
+		t.Run(tt.name, func(t *testing.T) {
+			_, faults := evaluate(t, claim(tt.lines), nil)
+			var b strings.Builder
+			faults.Write(&b)
+			if !strings.Contains(b.String(), tt.want) {
+				t.Errorf("got %q, want %q in it", b.String(), tt.want)
+			}
+		})
+	}
+}
