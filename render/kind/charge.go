@@ -111,7 +111,7 @@ func atOr(at []unit.Quantity, m *kinetics.Mechanism) []unit.Quantity {
 	if len(at) > 0 {
 		return at
 	}
-	return []unit.Quantity{{SI: m.Temperature, Unit: unit.Must("°C")}}
+	return []unit.Quantity{{SI: m.Temperature, Unit: celsius}}
 }
 
 func kelvins(at []unit.Quantity) []float64 {

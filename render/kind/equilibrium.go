@@ -161,15 +161,15 @@ func (s *equilibriumSource) results(v equilibriumValue) []Result {
 		}
 		for i, name := range v.Names {
 			out = append(out,
-				Result{Key: key("share", name), Value: Value(row.Amounts[i]/total, "none"), Unit: unit.Must("%"), Form: unit.FormPercent, Assumes: row.Assumes},
-				Result{Key: key("amount", name), Value: Value(row.Amounts[i], "none"), Unit: unit.Must("M"), Form: unit.FormMolar, Assumes: row.Assumes})
+				Result{Key: key("share", name), Value: Value(row.Amounts[i]/total, "none"), Unit: percent, Form: unit.FormPercent, Assumes: row.Assumes},
+				Result{Key: key("amount", name), Value: Value(row.Amounts[i], "none"), Unit: molar, Form: unit.FormMolar, Assumes: row.Assumes})
 		}
 		if len(s.Among) == 0 {
 			continue
 		}
 		for a := range v.Names {
 			for b := a + 1; b < len(v.Names); b++ {
-				out = append(out, Result{Key: key("ratio", v.Names[a]+":"+v.Names[b]), Value: ratioNumber(row.Amounts[a], row.Amounts[b]), Unit: unit.Unit{Scale: 1}, Form: unit.FormRatio, Assumes: row.Assumes})
+				out = append(out, Result{Key: key("ratio", v.Names[a]+":"+v.Names[b]), Value: ratioNumber(row.Amounts[a], row.Amounts[b]), Unit: plain, Form: unit.FormRatio, Assumes: row.Assumes})
 			}
 		}
 	}

@@ -118,16 +118,16 @@ func (s *mechanismSource) results(v mechanismValue) []Result {
 				add("equilibrium-constant", row.K, constantUnit(row.Change), unit.FormConstant)
 			}
 			if row.HalfLife > 0 {
-				add("half-life", row.HalfLife, unit.Must("s"), unit.FormSpan, s.halfLifeNote(row.Molecules)...)
+				add("half-life", row.HalfLife, seconds, unit.FormSpan, s.halfLifeNote(row.Molecules)...)
 			}
 			if s.racemises(v.Model, st) {
 				note := "racemisation is twice as fast as the exchange of the enantiomers, since each exchange undoes two molecules' worth of ee"
-				add("racemisation", 2*row.Rate, unit.Must("s-1"), unit.FormRate, note)
-				add("racemisation-half-life", rate.HalfLife(2*row.Rate), unit.Must("s"), unit.FormSpan, note)
-				add("ee-loss", -math.Log(0.99)/(2*row.Rate), unit.Must("s"), unit.FormSpan, note)
+				add("racemisation", 2*row.Rate, rateUnit(1), unit.FormRate, note)
+				add("racemisation-half-life", rate.HalfLife(2*row.Rate), seconds, unit.FormSpan, note)
+				add("ee-loss", -math.Log(0.99)/(2*row.Rate), seconds, unit.FormSpan, note)
 			}
 			if row.HalfLifeBack > 0 {
-				add("half-life-back", row.HalfLifeBack, unit.Must("s"), unit.FormSpan, s.halfLifeNote(row.MoleculesBack)...)
+				add("half-life-back", row.HalfLifeBack, seconds, unit.FormSpan, s.halfLifeNote(row.MoleculesBack)...)
 			}
 			var note []string
 			if row.Change != 0 {
@@ -139,7 +139,7 @@ func (s *mechanismSource) results(v mechanismValue) []Result {
 				chi = *row.Position
 				word = rate.PositionWord(chi)
 			}
-			add("position", chi, unit.Unit{Scale: 1}, unit.FormPosition, note...)
+			add("position", chi, plain, unit.FormPosition, note...)
 			out = append(out, Result{Key: key("character"), Value: Number{Kind: Words, Text: word}, Assumes: append(assumes[:len(assumes):len(assumes)], note...)})
 		}
 	}
@@ -170,26 +170,11 @@ func (s *mechanismSource) others() string {
 }
 
 // rateUnit is the unit of a rate constant for a step of that many molecules.
-func rateUnit(molecules int) unit.Unit {
-	switch molecules {
-	case 1:
-		return unit.Must("s-1")
-	case 2:
-		return unit.Must("M-1 s-1")
-	}
-	return unit.Must("M-2 s-1")
-}
+func rateUnit(molecules int) unit.Unit { return rateUnits[molecules-1] }
 
-// constantUnit is the unit of an equilibrium constant: M to the change of molecules.
-func constantUnit(change int) unit.Unit {
-	switch change {
-	case 0:
-		return unit.Unit{Scale: 1}
-	case 1:
-		return unit.Must("M")
-	}
-	return unit.Must(fmt.Sprintf("M%d", change))
-}
+// constantUnit is the unit of an equilibrium constant: M to the change of
+// molecules.
+func constantUnit(change int) unit.Unit { return constantUnits[change] }
 
 // asProblems turns an error of the core into problems at the states it names.
 func asProblems(err error, section string) error {

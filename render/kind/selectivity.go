@@ -241,9 +241,9 @@ func (s *selectivitySource) results(v selectivityValue) []Result {
 		shares := func(quantity string, x []float64) {
 			for g, group := range s.Products {
 				if len(x) > 0 {
-					out = append(out, Result{Key: key(quantity, group.Name), Value: Value(x[g], "none"), Unit: unit.Must("%"), Form: unit.FormPercent, Assumes: assumes})
+					out = append(out, Result{Key: key(quantity, group.Name), Value: Value(x[g], "none"), Unit: percent, Form: unit.FormPercent, Assumes: assumes})
 				} else {
-					out = append(out, Result{Key: key(quantity, group.Name), Value: Number{Kind: Nothing, Text: or(row.WhyNot, "none")}, Unit: unit.Must("%"), Form: unit.FormPercent, Assumes: assumes})
+					out = append(out, Result{Key: key(quantity, group.Name), Value: Number{Kind: Nothing, Text: or(row.WhyNot, "none")}, Unit: percent, Form: unit.FormPercent, Assumes: assumes})
 				}
 			}
 		}
@@ -254,7 +254,7 @@ func (s *selectivitySource) results(v selectivityValue) []Result {
 					if len(x) > 0 {
 						n = ratioNumber(x[a], x[b])
 					}
-					out = append(out, Result{Key: key(quantity, s.Products[a].Name+":"+s.Products[b].Name), Value: n, Unit: unit.Unit{Scale: 1}, Form: unit.FormRatio, Assumes: assumes})
+					out = append(out, Result{Key: key(quantity, s.Products[a].Name+":"+s.Products[b].Name), Value: n, Unit: plain, Form: unit.FormRatio, Assumes: assumes})
 				}
 			}
 		}
