@@ -26,6 +26,7 @@ var allowed = map[string][]string{
 	"kinetics/spread":   {},
 	"render":            {"render", "content", "kinetics", "diagram", "themes"},
 	"render/kind":       {"content/fault", "content/schema", "kinetics", "diagram", "render/paper"},
+	"render/history":    {},
 	"render/paper":      {"diagram", "kinetics/unit"},
 	"render/site":       {},
 	"render/study":      {"content", "kinetics", "render/kind"},

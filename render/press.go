@@ -21,15 +21,16 @@ import (
 type press struct {
 	study    *study.Study
 	theme    *themes.Theme
+	revision string              // of the notebook; "" if it is not known
 	mentions map[string][]string // by note: the notes that link to it
 }
 
-func newPress(s *study.Study) (*press, error) {
+func newPress(s *study.Study, revision string) (*press, error) {
 	theme, err := themes.Open(themes.Default, s.Book.Settings.Replace)
 	if err != nil {
 		return nil, err
 	}
-	p := &press{study: s, theme: theme, mentions: map[string][]string{}}
+	p := &press{study: s, revision: revision, theme: theme, mentions: map[string][]string{}}
 	for _, n := range s.Book.Notes {
 		for _, to := range n.Mentions {
 			p.mentions[to] = append(p.mentions[to], n.Name)
@@ -212,7 +213,7 @@ func (p *press) inputHash(n *content.Note) string {
 func (p *press) notebookPages(stage *site.Stage) error {
 	contents := themes.Contents{Site: p.site("index.html")}
 	claims := themes.Claims{Site: p.site("claims.html")}
-	colophon := themes.Colophon{Site: p.site("colophon.html")}
+	colophon := themes.Colophon{Site: p.site("colophon.html"), Revision: p.revision}
 	if front := p.study.Book.Front; front != nil {
 		text, err := body(p.study, front)
 		if err != nil {

@@ -11,6 +11,7 @@ import (
 
 	"saddlebook/content"
 	"saddlebook/content/fault"
+	"saddlebook/render/history"
 	"saddlebook/render/site"
 	"saddlebook/render/study"
 )
@@ -56,12 +57,13 @@ func Publish(ctx context.Context, src Source, to string, o Options) (Published, 
 	out.Tally = tally(s)
 	out.Faults = append(out.Faults, claimFaults(s)...)
 	out.Faults.Sort()
+	revision := src.revision(ctx, to) // before the stage puts its lock beside the target
 	stage, err := site.Begin(to)
 	if err != nil {
 		return out, err
 	}
 	defer stage.Abandon()
-	if err := writeSite(ctx, s, stage, o); err != nil {
+	if err := writeSite(ctx, s, revision, stage, o); err != nil {
 		return out, err
 	}
 	if out.Site, err = stage.Commit(); err != nil {
@@ -70,9 +72,26 @@ func Publish(ctx context.Context, src Source, to string, o Options) (Published, 
 	return out, nil
 }
 
+// revision is that of the notebook in git; "" for the embedded one, which is
+// that of the program.
+func (src Source) revision(ctx context.Context, target string) string {
+	if src.Embedded {
+		return ""
+	}
+	without := content.Published
+	folder, err1 := filepath.Abs(src.Folder)
+	site, err2 := filepath.Abs(target)
+	if err1 == nil && err2 == nil {
+		if rel, err := filepath.Rel(folder, site); err == nil && filepath.IsLocal(rel) {
+			without = filepath.ToSlash(rel)
+		}
+	}
+	return history.Of(ctx, folder, without).String()
+}
+
 // writeSite hands every page and file to the stage, several at once.
-func writeSite(ctx context.Context, s *study.Study, stage *site.Stage, o Options) error {
-	p, err := newPress(s)
+func writeSite(ctx context.Context, s *study.Study, revision string, stage *site.Stage, o Options) error {
+	p, err := newPress(s, revision)
 	if err != nil {
 		return err
 	}

@@ -263,4 +263,3 @@ func TestRelative(t *testing.T) {
 		}
 	}
 }
-
