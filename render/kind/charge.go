@@ -18,17 +18,6 @@ func chargeField(doc string, required bool) schema.Field {
 
 var basisField = schema.Field{Key: "basis", Doc: "the species that equiv and mol% refer to", Type: schema.Text, Wants: "species", Example: "R"}
 
-var atField = schema.Field{Key: "at", Doc: "the temperatures", Type: schema.Amounts, Dims: []unit.Dim{unit.Temperature},
-	Default: "the mechanism's own temperature", Example: `["-78 °C", "25 °C"]`}
-
-var usesMechanism = schema.Field{Key: "mechanism", Doc: "the mechanism it speaks of: its id, or note#id in another note", Type: schema.Text,
-	Required: true, Wants: "mechanism", Example: "addition"}
-
-// mechanismRef is the dependence of a block on the mechanism it names.
-func mechanismRef(target string) []Ref {
-	return []Ref{{Target: target, Kinds: []string{"mechanism"}, Path: []string{"mechanism"}}}
-}
-
 // concentrations turns a charge into mol/L by species; NaN where nothing is stated.
 func concentrations(m *kinetics.Mechanism, charge []schema.NamedAmount, basis string) ([]float64, fault.Problems) {
 	var ps fault.Problems
@@ -104,22 +93,6 @@ func groupsOf(m *kinetics.Mechanism, groups []schema.Group, key string) ([][]int
 		}
 	}
 	return out, ps
-}
-
-// atOr returns the temperatures asked for, or the mechanism's own.
-func atOr(at []unit.Quantity, m *kinetics.Mechanism) []unit.Quantity {
-	if len(at) > 0 {
-		return at
-	}
-	return []unit.Quantity{{SI: m.Temperature, Unit: celsius}}
-}
-
-func kelvins(at []unit.Quantity) []float64 {
-	out := make([]float64, len(at))
-	for i, q := range at {
-		out[i] = q.SI
-	}
-	return out
 }
 
 // ratioNumber is a over b; an infinite or undefined one is nothing, with words in its place.

@@ -31,11 +31,7 @@ func init() {
 		Refs:  func(s *equilibriumSource) []Ref { return mechanismRef(s.Mechanism) },
 		Check: (*equilibriumSource).check,
 		Compute: func(_ context.Context, s *equilibriumSource, in Inputs) (equilibriumValue, error) {
-			m, err := in.Mechanism(s.Mechanism)
-			if err != nil {
-				return equilibriumValue{}, err
-			}
-			return s.rest(m)
+			return onMechanism(in, s.Mechanism, s.rest)
 		},
 		Results: (*equilibriumSource).results,
 		Gives: []Gift{
@@ -45,14 +41,7 @@ func init() {
 		},
 		Present: (*equilibriumSource).present,
 		Sampler: func(_ context.Context, s *equilibriumSource, in Inputs) (Sampler, error) {
-			m, err := in.Mechanism(s.Mechanism)
-			if err != nil {
-				return Sampler{}, err
-			}
-			return Sampler{Mechanism: m, Temperatures: kelvins(atOr(s.At, m)), Results: func(m *kinetics.Mechanism) ([]Result, error) {
-				v, err := s.rest(m)
-				return s.results(v), err
-			}}, nil
+			return samplerOn(in, s.Mechanism, func(m *kinetics.Mechanism) []float64 { return kelvins(atOr(s.At, m)) }, s.rest, s.results)
 		},
 	})
 }

@@ -37,24 +37,13 @@ func init() {
 		Refs:  func(s *profileSource) []Ref { return mechanismRef(s.Mechanism) },
 		Check: (*profileSource).check,
 		Compute: func(_ context.Context, s *profileSource, in Inputs) (profileValue, error) {
-			m, err := in.Mechanism(s.Mechanism)
-			if err != nil {
-				return profileValue{}, err
-			}
-			return s.walk(m)
+			return onMechanism(in, s.Mechanism, s.walk)
 		},
 		Results: (*profileSource).results,
 		Gives:   []Gift{{"level/STATE@T", "free energy of the state or transition state above the zero of the profile"}},
 		Present: (*profileSource).present,
 		Sampler: func(_ context.Context, s *profileSource, in Inputs) (Sampler, error) {
-			m, err := in.Mechanism(s.Mechanism)
-			if err != nil {
-				return Sampler{}, err
-			}
-			return Sampler{Mechanism: m, Temperatures: []float64{s.temperature(m).SI}, Results: func(m *kinetics.Mechanism) ([]Result, error) {
-				v, err := s.walk(m)
-				return s.results(v), err
-			}}, nil
+			return samplerOn(in, s.Mechanism, func(m *kinetics.Mechanism) []float64 { return []float64{s.temperature(m).SI} }, s.walk, s.results)
 		},
 	})
 }

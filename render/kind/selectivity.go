@@ -30,7 +30,7 @@ func init() {
 		Refs:  func(s *selectivitySource) []Ref { return mechanismRef(s.Mechanism) },
 		Check: (*selectivitySource).check,
 		Compute: func(_ context.Context, s *selectivitySource, in Inputs) (selectivityValue, error) {
-			return s.compute(in)
+			return onMechanism(in, s.Mechanism, s.limits)
 		},
 		Results: (*selectivitySource).results,
 		Gives: []Gift{
@@ -42,15 +42,8 @@ func init() {
 			{"equilibrium-ratio/A:B@T", "A over B at equilibrium"},
 		},
 		Present: (*selectivitySource).present,
-		Sampler: func(ctx context.Context, s *selectivitySource, in Inputs) (Sampler, error) {
-			m, err := in.Mechanism(s.Mechanism)
-			if err != nil {
-				return Sampler{}, err
-			}
-			return Sampler{Mechanism: m, Temperatures: kelvins(atOr(s.At, m)), Results: func(m *kinetics.Mechanism) ([]Result, error) {
-				v, err := s.limits(m)
-				return s.results(v), err
-			}}, nil
+		Sampler: func(_ context.Context, s *selectivitySource, in Inputs) (Sampler, error) {
+			return samplerOn(in, s.Mechanism, func(m *kinetics.Mechanism) []float64 { return kelvins(atOr(s.At, m)) }, s.limits, s.results)
 		},
 	})
 }
@@ -88,14 +81,6 @@ func (s *selectivitySource) check() fault.Problems {
 		return fault.Problems{problem([]string{"products"}, "fewer than two products are listed", "list the products to compare, such as [\"A\", \"B\"]")}
 	}
 	return nil
-}
-
-func (s *selectivitySource) compute(in Inputs) (selectivityValue, error) {
-	m, err := in.Mechanism(s.Mechanism)
-	if err != nil {
-		return selectivityValue{}, err
-	}
-	return s.limits(m)
 }
 
 // limits computes both limits at every temperature.
