@@ -144,10 +144,10 @@ func TestKilledAtEachPoint(t *testing.T) {
 		n        int
 	}{
 		{"", "exchange", 100},
-		{"no-links", "exchange", 15},
+		{"no-links", "exchange", 5},
 		{"sync", "exchange", 3},
 		{"no-exchange", "rename", 100},
-		{"no-exchange no-links", "rename", 15},
+		{"no-exchange no-links", "rename", 5},
 	} {
 		t.Run("way="+way.name, func(t *testing.T) {
 			t.Parallel()
@@ -233,7 +233,7 @@ func TestKilledAgainAndAgain(t *testing.T) {
 			}
 			stands, gaps, kills := "B", 0, 0
 			rnd := rand.New(rand.NewPCG(7, 1))
-			runs := 90
+			runs := 60
 			if testing.Short() {
 				runs = 15
 			}
@@ -309,7 +309,7 @@ func TestKilledFromOutside(t *testing.T) {
 			whole := run("B", -1)
 			stands, next := "B", "A"
 			rnd := rand.New(rand.NewPCG(3, 14))
-			kills, old, gaps := 40, 0, 0
+			kills, old, gaps := 25, 0, 0
 			if testing.Short() {
 				kills = 8
 			}
