@@ -72,11 +72,22 @@ func body(s *study.Study, n *content.Note) (string, error) {
 			}
 			b.WriteString(text)
 		default:
-			b.WriteString(p.HTML)
+			b.WriteString(prose.Replace(p.HTML))
 		}
 	}
 	return b.String(), nil
 }
+
+// prose lets tables and code of the prose scroll in a box of their own, within
+// reach of the keyboard. A tag that an author wrote stands escaped, so what is
+// found here is goldmark's own.
+var prose = strings.NewReplacer(
+	"<table>", "<div class=\"table\" role=\"region\" tabindex=\"0\" aria-label=\"Table\">\n<table>",
+	"</table>", "</table>\n</div>",
+	"<th>", "<th scope=\"col\">",
+	"<th class=", "<th scope=\"col\" class=",
+	"<pre>", "<pre tabindex=\"0\">",
+)
 
 // reading is a result set into prose: its number, with its key and interval
 // for those who ask.

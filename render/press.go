@@ -5,6 +5,8 @@ import (
 	"encoding/json"
 	"fmt"
 	"html/template"
+	"io/fs"
+	"net/url"
 	"path"
 	"slices"
 	"strings"
@@ -26,7 +28,7 @@ type press struct {
 }
 
 func newPress(s *study.Study, revision string) (*press, error) {
-	theme, err := themes.Open(themes.Default, s.Book.Settings.Replace)
+	theme, err := dress(s.Book)
 	if err != nil {
 		return nil, err
 	}
@@ -37,6 +39,19 @@ func newPress(s *study.Study, revision string) (*press, error) {
 		}
 	}
 	return p, nil
+}
+
+// dress opens the theme, with what the notebook puts in place of its files.
+func dress(book *content.Notebook) (*themes.Theme, error) {
+	replace := map[string]string{}
+	for file, from := range book.Settings.Replace {
+		data, err := fs.ReadFile(book.FS, from)
+		if err != nil {
+			return nil, err
+		}
+		replace[file] = string(data)
+	}
+	return themes.Open(themes.Default, replace)
 }
 
 // site is what a page at that path knows of the notebook.
@@ -119,6 +134,7 @@ func (p *press) note(n *content.Note, stage *site.Stage) error {
 // whole.
 func heading(text string) (head, rest template.HTML) {
 	const end = "</h1>"
+	text = strings.TrimLeft(text, "\n ")
 	if i := strings.Index(text, end); i >= 0 && strings.HasPrefix(text, "<h1") {
 		return template.HTML(text[:i+len(end)]), template.HTML(text[i+len(end):])
 	}
@@ -189,7 +205,8 @@ func relative(from, to string) string {
 	for len(up) > 0 && len(down) > 0 && up[0] == down[0] {
 		up, down = up[1:], down[1:]
 	}
-	return strings.Repeat("../", len(up)) + path.Join(append(slices.Clone(down), path.Base(to))...)
+	to = strings.Repeat("../", len(up)) + path.Join(append(slices.Clone(down), path.Base(to))...)
+	return (&url.URL{Path: to}).String()
 }
 
 // inputHash is a hash of all that the page of a note depends on: its text and
@@ -223,7 +240,7 @@ func (p *press) notebookPages(stage *site.Stage) error {
 	}
 	for _, n := range p.study.Book.Notes {
 		about := p.about(n)
-		href := n.Name + ".html"
+		href := relative("index.html", n.Name+".html")
 		findings := p.findings(n, href)
 		var tally themes.Tally
 		for _, f := range findings {

@@ -257,6 +257,8 @@ func TestRelative(t *testing.T) {
 		{"x/a.html", "x/b.html", "b.html"},
 		{"x/y/a.html", "x/z/b.html", "../z/b.html"},
 		{"x/a.html", "x/a/results.csv", "a/results.csv"},
+		{"a.html", "50 % done?.html", "50%20%25%20done%3F.html"},
+		{"a.html", "a:b.html", "./a:b.html"},
 	} {
 		if got := relative(tt.from, tt.to); got != tt.want {
 			t.Errorf("from %s to %s: %s, want %s", tt.from, tt.to, got, tt.want)

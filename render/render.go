@@ -9,6 +9,7 @@ import (
 	"fmt"
 	"io/fs"
 	"os"
+	"path"
 	"path/filepath"
 	"runtime"
 
@@ -112,6 +113,10 @@ func open(ctx context.Context, src Source, o Options) (*study.Study, fault.List,
 		return nil, nil, err
 	}
 	faults = append(faults, more...)
+	if _, err := dress(book); err != nil {
+		faults = append(faults, fault.Diagnostic{At: fault.Place{File: path.Join(book.Root, content.SettingsFile)}, Severity: fault.Error, Key: "theme.replace",
+			Msg: fmt.Sprintf("the theme cannot be used: %v", err), Fix: "mend the file that stands in for the theme's own, or leave it out", Err: err})
+	}
 	faults.Sort()
 	return s, faults, nil
 }
