@@ -87,6 +87,7 @@ func (m *Mechanism) Check() []Complaint {
 		}
 		checkEnergy(s.Name, s.Energy, say)
 	}
+	m.checkFormulas(say)
 	if err := m.stated().Check(); err != nil {
 		say("", "shared", true, err.Error(), "correct the shared errors")
 	}

@@ -29,7 +29,8 @@
 // # Errors
 //
 // What an author can cause comes back as a *ReactionError (a reaction that
-// cannot be read), Complaints (energies that make no sense), a *LimitError (a
+// cannot be read), a *FormulaError (a formula that cannot be read), Complaints
+// (energies that make no sense, steps that do not balance), a *LimitError (a
 // limit that is not defined) or a *PathError (a profile that cannot be walked).
 // A panic means a fault in the calling code: an index or a length that does not
 // fit the mechanism.

@@ -18,6 +18,7 @@ type Species struct {
 	Forms               int           // 0 or 1: one form; n: G − RT ln n
 	Standard            rate.Standard // of Energy
 	SD                  *float64      // J/mol, its own error; nil: taken as exact
+	Formula             string        // as ParseFormula reads it; "": not given
 }
 
 // Step is one elementary step over one transition state.

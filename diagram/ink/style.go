@@ -28,7 +28,7 @@ var colours = map[string]struct{ light, dark string }{
 
 // rules gives each role its look. A name behind $ is a colour.
 var rules = []struct{ selector, body string }{
-	{"text", "fill: $ink; font-family: " + lettering.Family + "; font-style: normal; font-weight: 400; font-kerning: none; font-variant-ligatures: none; letter-spacing: 0; word-spacing: 0; text-transform: none"},
+	{"text", "fill: $ink; font-family: " + lettering.Family + "; font-style: normal; font-weight: 400; font-size-adjust: none; font-kerning: none; font-variant-ligatures: none; letter-spacing: 0; word-spacing: 0; text-transform: none"},
 	{".ground", "fill: $ground"},
 	{".axis, .tick", "stroke: $rule; stroke-width: 1; fill: none"},
 	{".zero", "stroke: $rule; stroke-width: 0.75; stroke-dasharray: 1 3; fill: none"},

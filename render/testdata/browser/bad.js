@@ -1,0 +1,2 @@
+console.warn("a word");
+throw new Error("a fault");
