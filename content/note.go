@@ -113,10 +113,21 @@ func unreadable(source []byte) (at int, msg, fix string) {
 
 // block parses the TOML of a block.
 func (r *reader) block(m *mark.Block) *Block {
-	b := &Block{Note: r.note, Kind: m.Kind, At: r.at(m.Start), Text: m.Text, Label: m.Kind}
+	b := &Block{Note: r.note, Kind: m.Kind, At: r.at(m.Start), KindAt: r.at(m.KindAt), Text: m.Text, Label: m.Kind}
 	tree, faults := schema.Parse(m.Text, func(i int) fault.Place { return r.at(m.Offset(i)) })
 	b.Tree = tree
 	tree.KeyAt = b.At
+	if strings.TrimSpace(m.Text) == "" {
+		tree.Broken = true // the fault is that it is empty
+	}
+	switch i := strayFence(m.Text); {
+	case !tree.Broken:
+	case !m.Closed:
+		faults = nil // it was read into the text behind it, and the page says so
+	case i >= 0: // so was this one, up to the end of the next block
+		faults = fault.List{{At: b.At, Fix: "add " + m.Fence + " on a line of its own after its last line",
+			Msg: fmt.Sprintf("the block is not closed before the fence in line %d", r.at(m.Offset(i)).Line)}}
+	}
 	if id := b.ID(); id != "" {
 		b.Label = fmt.Sprintf("%s %q", m.Kind, id)
 	}
@@ -129,6 +140,19 @@ func (r *reader) block(m *mark.Block) *Block {
 	}
 	r.note.Blocks = append(r.note.Blocks, b)
 	return b
+}
+
+// strayFence returns the offset of a line in the text of a block that opens
+// another fence, or -1.
+func strayFence(text string) int {
+	at := 0
+	for line := range strings.Lines(text) {
+		if s := strings.TrimSpace(line); strings.HasPrefix(s, "```") || strings.HasPrefix(s, "~~~") {
+			return at
+		}
+		at += len(line)
+	}
+	return -1
 }
 
 func anchorOf(id string) string { return strings.Join(strings.Fields(id), "-") }

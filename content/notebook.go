@@ -66,12 +66,13 @@ type Piece struct {
 
 // A Block is a fence with the information string `toml KIND`.
 type Block struct {
-	Note  *Note
-	Kind  string
-	At    fault.Place  // of the opening fence
-	Text  string       // the TOML, without the prefixes of quotes and lists
-	Tree  *schema.Node // never nil; Broken if Text is not well-formed TOML, which is then among the faults
-	Label string       // `mechanism "addition"`; `claims` for a block without an id
+	Note   *Note
+	Kind   string
+	At     fault.Place  // of the opening fence
+	KindAt fault.Place  // of the word that names the kind
+	Text   string       // the TOML, without the prefixes of quotes and lists
+	Tree   *schema.Node // never nil; Broken if Text is empty or not well-formed TOML, which is then among the faults
+	Label  string       // `mechanism "addition"`; `claims` for a block without an id
 }
 
 // ID returns the block's id, or "".

@@ -36,6 +36,10 @@ const lowBarrier = 3 * 1000 * joulesPerCalorie
 // J/mol/K; a value that small was probably meant in kJ.
 const smallEntropy = 1.0
 
+// largeEntropy is beyond the entropy of any molecule that has a mechanism, in
+// J/mol/K; a value that large was probably meant in J where kJ stands.
+const largeEntropy = 20000.0
+
 // Check returns what is wrong or doubtful in the mechanism itself and at its
 // own temperature, in order: species, then steps, then the whole. Complaints
 // that are not Fatal are warnings.
@@ -111,14 +115,14 @@ func (m *Mechanism) Check() []Complaint {
 	for _, r := range n.Reactions {
 		var ways []string
 		if r.Barrier < lowBarrier {
-			ways = append(ways, fmt.Sprintf("from %s %s", sideText(r.From, n.Names), energyText(r.Barrier)))
+			ways = append(ways, fmt.Sprintf("%s from %s", energyText(r.Barrier), sideText(r.From, n.Names)))
 		}
 		if r.Returns && r.BarrierBack < lowBarrier {
-			ways = append(ways, fmt.Sprintf("from %s %s", sideText(r.To, n.Names), energyText(r.BarrierBack)))
+			ways = append(ways, fmt.Sprintf("%s from %s", energyText(r.BarrierBack), sideText(r.To, n.Names)))
 		}
 		if len(ways) > 0 {
-			say(r.Name, "", false, fmt.Sprintf("the barrier of %s is only %s at %s, and below 3 kcal/mol transition state theory does not give its rate", r.Name, strings.Join(ways, " and "), temperatureText(n.T)),
-				"take its rate as a lower bound of the time scale, or join the two states it links into one")
+			say(r.Name, "", false, fmt.Sprintf("step %s has a barrier of only %s at %s, and below 3 kcal/mol transition state theory does not give its rate", r.Name, strings.Join(ways, " and "), temperatureText(n.T)),
+				"take its rate as an upper bound, or join the two states it links into one")
 		}
 	}
 	return out
@@ -129,6 +133,11 @@ func checkEnergy(state string, e thermo.Energy, say func(state, key string, fata
 		say(state, "", true, fmt.Sprintf("the energy of %s: %v", state, err), "correct its energy")
 	}
 	for _, s := range entropies(e) {
+		if math.Abs(s) > largeEntropy {
+			say(state, "S", true, fmt.Sprintf("the entropy of %s is %.3g J/mol/K, beyond any molecule: was its unit J, not kJ?", state, s),
+				fmt.Sprintf("write \"%.4g J/mol/K\" or \"%.4g cal/mol/K\" if that is what was meant", s/1000, s/1000))
+			return
+		}
 		if s != 0 && math.Abs(s) < smallEntropy {
 			say(state, "S", false, fmt.Sprintf("the entropy of %s is %.3g J/mol/K, which looks like a value meant in kJ or kcal", state, s),
 				fmt.Sprintf("if so write \"%.4g J/mol/K\" or \"%.4g cal/mol/K\"", s*1000, s/joulesPerCalorie*1000))

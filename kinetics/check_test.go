@@ -31,10 +31,10 @@ func TestCheck(t *testing.T) {
 		}, "", false, "no common state: R, A; U, V"},
 		{"shallow", func(*Mechanism) *Mechanism {
 			return build(t, T, []state{{"R", 0}, {"A", -3}}, []state{{"TS: R <=> A", 2}})
-		}, "TS", false, "the barrier of TS is only from R 2.0 kcal/mol (8.4 kJ/mol) at 25 °C"},
+		}, "TS", false, "step TS has a barrier of only 2.0 kcal/mol (8.4 kJ/mol) from R at 25 °C"},
 		{"shallow back", func(*Mechanism) *Mechanism {
 			return build(t, T, []state{{"R", 0}, {"I", 9}}, []state{{"TS: R <=> I", 11}})
-		}, "TS", false, "from I 2.0 kcal/mol"},
+		}, "TS", false, "2.0 kcal/mol (8.4 kJ/mol) from I"},
 		{"low", func(*Mechanism) *Mechanism {
 			return build(t, T, []state{{"R", 0}, {"A", 3}}, []state{{"TS: R <=> A", 2}})
 		}, "TS", true, "below its products A"},

@@ -2,6 +2,7 @@ package kinetics
 
 import (
 	"math"
+	"slices"
 
 	"saddlebook/kinetics/rate"
 	"saddlebook/kinetics/spread"
@@ -18,6 +19,7 @@ type Species struct {
 	Forms               int           // 0 or 1: one form; n: G − RT ln n
 	Standard            rate.Standard // of Energy
 	SD                  *float64      // J/mol, its own error; nil: taken as exact
+	SDEntropy           *float64      // J/mol/K, own error of the entropy that Energy is given by; nil: taken as exact
 	Formula             string        // as ParseFormula reads it; "": not given
 }
 
@@ -34,6 +36,7 @@ type Step struct {
 	Degeneracy, Transmission float64       // both directions; 0 reads as 1
 	Standard                 rate.Standard // of Energy; for a barrier, of all states in it
 	SD                       *float64      // J/mol, its own error; nil: taken as exact
+	SDEntropy                *float64      // J/mol/K, own error of the entropy that Energy is given by; nil: taken as exact
 }
 
 // Common is an error that states have in common, fully correlated. States are
@@ -84,9 +87,13 @@ func (m *Mechanism) Index(species string) int {
 // Shifted returns the mechanism with d[i] (J/mol) added to the energy of state
 // i, species first, then steps; for a barrier above the reactants, to the
 // barrier. The new mechanism raises transition states that come to lie below a
-// side (see RaiseLow). The length of d must be the number of states.
+// side (see RaiseLow). The length of d is the number of states, or that of a
+// plan of Plans, which goes on with the shifts (J/mol/K) of the entropies that
+// have an error of their own.
 func (m *Mechanism) Shifted(d []float64) *Mechanism {
-	if len(d) != len(m.Species)+len(m.Steps) {
+	states := len(m.Species) + len(m.Steps)
+	entropies := m.uncertainEntropies()
+	if len(d) != states && len(d) != states+len(entropies) {
 		panic("kinetics: Shifted: one shift for each state is needed")
 	}
 	c := *m
@@ -99,7 +106,30 @@ func (m *Mechanism) Shifted(d []float64) *Mechanism {
 	for i := range c.Steps {
 		c.Steps[i].Energy = c.Steps[i].Energy.Plus(d[len(c.Species)+i])
 	}
+	for k, ds := range d[states:] {
+		if i := entropies[k]; i < len(c.Species) {
+			c.Species[i].Energy = c.Species[i].Energy.PlusEntropy(ds)
+		} else {
+			c.Steps[i-len(c.Species)].Energy = c.Steps[i-len(c.Species)].Energy.PlusEntropy(ds)
+		}
+	}
 	return &c
+}
+
+// uncertainEntropies returns the states whose entropy has an error of its own.
+func (m *Mechanism) uncertainEntropies() []int {
+	var out []int
+	for i, s := range m.Species {
+		if s.SDEntropy != nil {
+			out = append(out, i)
+		}
+	}
+	for i, s := range m.Steps {
+		if s.SDEntropy != nil {
+			out = append(out, len(m.Species)+i)
+		}
+	}
+	return out
 }
 
 // ownErrors returns the own standard deviation of every state, 0 where there is none.
@@ -124,6 +154,13 @@ func orZero(x *float64) float64 {
 // stated returns the plan of errors just as the author gives them.
 func (m *Mechanism) stated() spread.Plan {
 	p := spread.Plan{Case: spread.Stated, Own: m.ownErrors()}
+	for _, i := range m.uncertainEntropies() {
+		if i < len(m.Species) {
+			p.Own = append(p.Own, *m.Species[i].SDEntropy)
+		} else {
+			p.Own = append(p.Own, *m.Steps[i-len(m.Species)].SDEntropy)
+		}
+	}
 	for _, c := range m.Common {
 		part := spread.Part{States: append([]int(nil), c.States...)}
 		for range c.States {
@@ -149,9 +186,10 @@ func (m *Mechanism) HasErrors() bool {
 // error, in order. A species at constant zero only sets the scale and is left out.
 func (m *Mechanism) ExactStates() []string {
 	p := m.stated()
+	entropies := m.uncertainEntropies()
 	var names []string
 	for i, name := range m.States() {
-		if p.SD(i) == 0 && !(i < len(m.Species) && m.setsZero(i)) {
+		if p.SD(i) == 0 && !slices.Contains(entropies, i) && !(i < len(m.Species) && m.setsZero(i)) {
 			names = append(names, name)
 		}
 	}
@@ -176,7 +214,7 @@ func (m *Mechanism) Plans() []spread.Plan {
 	}
 	plan := m.stated()
 	var uncertain []int
-	for i := len(m.Species); i < len(plan.Own); i++ {
+	for i := len(m.Species); i < len(m.Species)+len(m.Steps); i++ {
 		if plan.Own[i] > 0 {
 			uncertain = append(uncertain, i)
 		}

@@ -26,6 +26,9 @@ func lay(b *study.Block) (*paper.Sheet, error) {
 		return shown(r), true
 	})
 	b.Kind.Present(b.Spec, b.Value, sheet)
+	for _, d := range b.Doubts {
+		sheet.Caution("Doubtful: " + d + ".")
+	}
 	return sheet, sheet.Err()
 }
 

@@ -15,8 +15,10 @@ type Block struct {
 	Kind   string // the second word of the information string
 	Start  int    // offset of the first fence character
 	Info   int    // offset of the information string
+	KindAt int    // offset of its second word
 	Text   string // the TOML, without the prefixes of quotes and lists
 	Closed bool   // by a fence of its own
+	Fence  string // the run of characters that opens it, and must close it
 
 	extra  *word // a third word of the information string
 	stop   int   // offset after the last line
@@ -90,10 +92,11 @@ func (f fenceParser) Open(parent ast.Node, reader text.Reader, pc parser.Context
 	}
 	_, line := reader.PeekLine()
 	b := &Block{
-		Kind:  words[1].text,
-		Start: line.Start + pc.BlockOffset() - line.Padding,
-		Info:  info.Start,
-		stop:  info.Stop,
+		Kind:   words[1].text,
+		Start:  line.Start + pc.BlockOffset() - line.Padding,
+		Info:   info.Start,
+		KindAt: words[1].at,
+		stop:   info.Stop,
 	}
 	if len(words) > 2 {
 		b.extra = &words[2]

@@ -5,6 +5,7 @@ import (
 	"cmp"
 	"fmt"
 	"slices"
+	"strconv"
 
 	"github.com/yuin/goldmark/ast"
 	extast "github.com/yuin/goldmark/extension/ast"
@@ -32,12 +33,13 @@ type where struct {
 type walk struct {
 	page     *Page
 	source   []byte
-	shown    map[int]bool // offsets of the readings that are shown
-	inImages map[int]bool // offsets of those in image text
-	inUnused map[int]bool // offsets of those in unused footnotes
-	code     []span       // where `{=` means nothing
-	rows     []int        // an offset in each table row
-	titled   bool         // the first level-1 heading is past
+	shown    map[int]bool   // offsets of the readings that are shown
+	inImages map[int]bool   // offsets of those in image text
+	inUnused map[int]bool   // offsets of those in unused footnotes
+	code     []span         // where `{=` means nothing
+	rows     []int          // an offset in each table row
+	titled   bool           // the first level-1 heading is past
+	tags     map[string]int // HTML tags that are open
 }
 
 type span struct{ start, stop int }
@@ -76,6 +78,9 @@ func (w *walk) node(n ast.Node, in where) {
 	case *ast.HTMLBlock:
 		w.html(n.Pos(), n.Lines(), n.ClosureLine)
 	case *ast.RawHTML:
+		if w.closes(n.Pos()) {
+			break
+		}
 		w.html(n.Pos(), n.Segments, text.NewSegment(-1, -1))
 	case *extast.TableRow:
 		w.rows = append(w.rows, n.Pos())
@@ -96,6 +101,7 @@ func (w *walk) node(n ast.Node, in where) {
 }
 
 func (w *walk) block(b *Block, in where) {
+	b.Fence = fenceRun(w.source[b.Start:])
 	w.page.Blocks = append(w.page.Blocks, b)
 	w.code = append(w.code, span{b.Start, b.stop})
 	at := Fault{Start: b.Start, Block: b}
@@ -104,8 +110,7 @@ func (w *walk) block(b *Block, in where) {
 		w.fault(at)
 	}
 	if !b.Closed {
-		run := fenceRun(w.source[b.Start:])
-		at.Msg, at.Fix = "the block is not closed", "add "+run+" on a line of its own after its last line"
+		at.Msg, at.Fix = "the block is not closed", "add "+b.Fence+" on a line of its own after its last line"
 		w.fault(at)
 	}
 	if b.extra != nil {
@@ -210,10 +215,42 @@ func (w *walk) inline(n *ast.CodeSpan) {
 	w.code = append(w.code, s)
 }
 
+// tag quotes the tag that starts at an offset, cut at the end of its line.
+func (w *walk) tag(at int) string {
+	line, _, _ := bytes.Cut(w.source[at:], []byte("\n"))
+	if i := bytes.IndexByte(line, '>'); i >= 0 {
+		line = line[:i+1]
+	}
+	const most = 40
+	tag := []rune(string(bytes.TrimSpace(line)))
+	if len(tag) > most {
+		tag = append(tag[:most-1], '…')
+	}
+	return strconv.Quote(string(tag))
+}
+
+// closes reports whether an HTML tag at an offset closes one that was reported,
+// and notes the tag if it opens.
+func (w *walk) closes(at int) bool {
+	name := bytes.TrimLeft(w.source[at+1:], "/")
+	if i := bytes.IndexAny(name, " \t\r\n/>"); i >= 0 {
+		name = name[:i]
+	}
+	if w.tags == nil {
+		w.tags = map[string]int{}
+	}
+	if w.source[at+1] != '/' {
+		w.tags[string(name)]++
+		return false
+	}
+	w.tags[string(name)]--
+	return w.tags[string(name)] >= 0
+}
+
 // html reports raw HTML. What stands in a comment was taken out by the author;
 // that one warning covers it.
 func (w *walk) html(at int, s *text.Segments, closing text.Segment) {
-	w.fault(Fault{Start: at, Warn: true, Msg: "raw HTML is left out", Fix: "write Markdown"})
+	w.fault(Fault{Start: at, Warn: true, Msg: "the raw HTML " + w.tag(at) + " is left out", Fix: `write Markdown, or \< for the character itself`})
 	if s.Len() == 0 || !bytes.HasPrefix(bytes.TrimLeft(w.source[s.At(0).Start:], " \t"), []byte("<!--")) {
 		return
 	}

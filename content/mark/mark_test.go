@@ -3,6 +3,7 @@ package mark
 import (
 	"fmt"
 	"runtime"
+	"slices"
 	"strings"
 	"testing"
 	"weak"
@@ -302,14 +303,20 @@ func TestLinks(t *testing.T) {
 }
 
 func TestRawHTML(t *testing.T) {
-	got, p := rendered(t, "a <b>c</b>\n\n<div>x</div>\n")
-	if got != "<p>a c</p>\n" {
+	got, p := rendered(t, "a <b>c</b>\n\n<div>x</div>\n\nd</b> <br/>\n")
+	if got != "<p>a c</p>\n<p>d </p>\n" {
 		t.Errorf("got %q", got)
 	}
-	for i, at := range []int{2, 6, 12} {
-		if i >= len(p.Faults) || p.Faults[i].Start != at || !p.Faults[i].Warn {
-			t.Fatalf("faults %s", faults(p))
+	want := []int{2, 12, 27, 32} // a closing tag goes with the one it closes
+	var at []int
+	for _, f := range p.Faults {
+		if !f.Warn {
+			t.Errorf("no warning: %+v", f)
 		}
+		at = append(at, f.Start)
+	}
+	if !slices.Equal(at, want) {
+		t.Errorf("faults %s", faults(p))
 	}
 }
 

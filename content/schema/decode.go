@@ -29,8 +29,9 @@ func Decode(n *Node, fields []Field, into any) fault.List {
 
 type decoder struct {
 	root   *Node
-	fields []Field  // of the root
-	path   []string // of the node in hand
+	fields []Field         // of the root
+	path   []string        // of the node in hand
+	below  map[string]bool // keys of the root that stand under a header
 	faults fault.List
 }
 
@@ -60,6 +61,7 @@ func (d *decoder) in(key string, f func()) {
 // table fills a struct from the entries of a table.
 func (d *decoder) table(n *Node, fields []Field, into reflect.Value) {
 	slots := slotsOf(into.Type())
+	misspelt := map[string]bool{} // keys that are there under a wrong name
 	for _, kid := range n.Kids {
 		if kid.refused {
 			continue
@@ -67,14 +69,14 @@ func (d *decoder) table(n *Node, fields []Field, into reflect.Value) {
 		i := slices.IndexFunc(fields, func(f Field) bool { return f.Key == kid.Key })
 		d.in(kid.Key, func() {
 			if i < 0 {
-				d.unknown(kid, fields)
+				misspelt[d.unknown(kid, fields)] = true
 				return
 			}
 			d.value(kid, fields[i], into.FieldByIndex(slots[kid.Key]))
 		})
 	}
 	for _, f := range fields {
-		if f.Required && n.kid(f.Key) == nil {
+		if f.Required && n.kid(f.Key) == nil && !misspelt[f.Key] && !(len(d.path) == 0 && d.below[f.Key]) {
 			d.in(f.Key, func() {
 				d.report(n.KeyAt, "the key "+quote(f.Key)+" is missing", "write "+f.line())
 			})
@@ -82,8 +84,9 @@ func (d *decoder) table(n *Node, fields []Field, into reflect.Value) {
 	}
 }
 
-// unknown reports a key that is not in the list.
-func (d *decoder) unknown(n *Node, fields []Field) {
+// unknown reports a key that is not in the list, and returns the key that was
+// most likely meant, or "".
+func (d *decoder) unknown(n *Node, fields []Field) string {
 	msg := "the key " + quote(n.Key) + " is not known here"
 	known := keys(fields)
 	near := Nearest(n.Key, known)
@@ -91,19 +94,29 @@ func (d *decoder) unknown(n *Node, fields []Field) {
 	case near != "":
 		d.report(n.KeyAt, msg, "write "+near)
 	case d.misplaced(n.Key):
-		d.report(n.KeyAt, msg, fmt.Sprintf("it belongs to the block itself: move it above the first [%s] header", d.path[0]))
+		d.report(n.KeyAt, msg, d.move(n.Key))
 	case len(all) <= 100:
 		d.report(n.KeyAt, msg, "write one of "+all)
 	default:
 		kind, _, _ := strings.Cut(d.root.Label, " ")
 		d.report(n.KeyAt, msg, strings.TrimSpace("take one from the list of keys: saddlebook reference "+kind))
 	}
+	return near
 }
 
 // misplaced tells whether a key inside a table is one of the block's own: keys
 // after a [header] belong to its table.
 func (d *decoder) misplaced(key string) bool {
 	return len(d.path) > 1 && slices.Contains(keys(d.fields), key)
+}
+
+// move words the remedy for a misplaced key.
+func (d *decoder) move(key string) string {
+	if d.below == nil {
+		d.below = map[string]bool{}
+	}
+	d.below[key] = true
+	return fmt.Sprintf("move it above the first [%s] header, for it belongs to no table", d.path[0])
 }
 
 func keys(fields []Field) []string {
@@ -236,7 +249,7 @@ func (d *decoder) named(n *Node, f Field, into reflect.Value) {
 		if kid.Kind != Table {
 			fix := "write " + place.Name(kid.Key) + " = { " + inner(f.Fields) + " }"
 			if d.misplaced(kid.Key) {
-				fix = fmt.Sprintf("it belongs to the block itself: move it above the first [%s] header", d.path[0])
+				fix = d.move(kid.Key)
 			}
 			d.report(kid.At, found(kid)+" stands where a table is wanted", fix)
 			return

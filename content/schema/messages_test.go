@@ -21,7 +21,6 @@ var messages = []struct {
 `, []string{
 		`n.md:1:1: error: mechanism "addition", Temperature: the key "Temperature" is not known here; write temperature`,
 		`n.md:1:1: error: mechanism "addition", id: the key "id" is missing; write id = "addition"`,
-		`n.md:1:1: error: mechanism "addition", temperature: the key "temperature" is missing; write temperature = "25 °C"`,
 	}},
 	{`id = "a/b"
 temperature = 25
@@ -77,8 +76,8 @@ fast = 1
 scale = [1]
 `, []string{
 		`n.md:3:13: error: mechanism "addition", at.2: unit "h" measures a time where a temperature is wanted; write it as in "-78 °C"`,
-		`n.md:3:17: error: mechanism "addition", at.3: a list stands where a temperature is wanted; write "-78 °C"`,
-		`n.md:3:22: error: mechanism "addition", at.4: the truth value true stands where a temperature is wanted; write "-78 °C"`,
+		`n.md:3:17: error: mechanism "addition", at.3: a list stands where a temperature is wanted; write it as in "-78 °C"`,
+		`n.md:3:22: error: mechanism "addition", at.4: the truth value true stands where a temperature is wanted; write it as in "-78 °C"`,
 		`n.md:4:11: error: mechanism "addition", authors: the number 4 stands where a text or a list of texts is wanted; write authors = "4"`,
 		`n.md:5:9: error: mechanism "addition", error: the number 3 stands where a table is wanted; write error = { step = 0.8 }`,
 		`n.md:6:8: error: mechanism "addition", fast: the number 1 stands where true or false is wanted; write fast = true`,
@@ -156,7 +155,7 @@ energies = "kJ/mol"
 		`n.md:6:38: error: mechanism "addition", species." B".forms: the text "2" stands where a whole number is wanted; write forms = 2`,
 		`n.md:7:19: error: mechanism "addition", species.C.H: "9.9 +- x" has no number where one is due; write it as in "18.4 kcal/mol"`,
 		`n.md:7:31: error: mechanism "addition", species.C.label: the truth value true stands where a text is wanted; write label = "true"`,
-		`n.md:8:12: error: mechanism "addition", species.energies: the text "kJ/mol" stands where a table is wanted; it belongs to the block itself: move it above the first [species] header`,
+		`n.md:8:12: error: mechanism "addition", species.energies: the text "kJ/mol" stands where a table is wanted; move it above the first [species] header, for it belongs to no table`,
 		`n.md:9:1: error: mechanism "addition", species."": the name "" is empty; write a name`,
 	}},
 	{ok + `[step.TS1]
@@ -165,7 +164,7 @@ scale = 3
 reaction = ["A -> B"]
 `, []string{
 		`n.md:3:7: error: mechanism "addition", step.TS1.reaction: the key "reaction" is missing; write reaction = "R + X <=> A"`,
-		`n.md:4:1: error: mechanism "addition", step.TS1.scale: the key "scale" is not known here; it belongs to the block itself: move it above the first [step] header`,
+		`n.md:4:1: error: mechanism "addition", step.TS1.scale: the key "scale" is not known here; move it above the first [step] header, for it belongs to no table`,
 		`n.md:6:12: error: mechanism "addition", step.TS2.reaction: a list stands where a text is wanted; write reaction = "R + X <=> A"`,
 	}},
 	{ok + `[[claim]]

@@ -45,7 +45,7 @@ type Node struct {
 	Kids  []*Node // entries in source order, or elements
 
 	Label  string // root only, set by whoever parses: what diagnostics call the block, as `mechanism "addition"`
-	Broken bool   // root only: the source is not well formed, and only the texts at its top are kept
+	Broken bool   // root only: the source is empty or not well formed, and only the texts at its top are kept
 
 	refused bool // a value that Parse has reported
 	simple  bool // a text on one line without escapes: its characters stand as written
@@ -239,6 +239,12 @@ func forbidden(r rune) bool {
 // below returns the path of a kid, in memory of its own.
 func below(path []string, key string) []string {
 	return append(path[:len(path):len(path)], key)
+}
+
+// Refused reports whether Parse has reported a value at or below the node, which
+// then cannot be decoded.
+func (n *Node) Refused() bool {
+	return n.refused || slices.ContainsFunc(n.Kids, (*Node).Refused)
 }
 
 // Get returns the node at a path of keys and ordinals ("1", "2", ...), or nil.

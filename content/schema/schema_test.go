@@ -1,6 +1,7 @@
 package schema
 
 import (
+	"fmt"
 	"slices"
 	"strings"
 	"testing"
@@ -229,15 +230,44 @@ func TestBounds(t *testing.T) {
 }
 
 func TestGroupsList(t *testing.T) {
-	for source, want := range map[string]string{`["A", "B"]`: "A=A B=B", `"A"`: "A=A", `{ all = ["A", "B"] }`: "all=A+B"} {
+	for source, want := range map[string]string{
+		`["A", "B"]`:                    "A=A[1] B=B[2]",
+		`"A"`:                           "A=A[]",
+		`{ all = ["A", "B"], c = "C" }`: "all=A+B[all.1 all.2] c=C[c]",
+	} {
 		var s sample
 		_, faults := read("id = \"a\"\ntemperature = \"1 K\"\nproducts = "+source, &s)
 		var got []string
 		for _, g := range s.Products {
-			got = append(got, g.Name+"="+strings.Join(g.Members, "+"))
+			var paths []string
+			for _, p := range g.Paths {
+				paths = append(paths, strings.Join(p, "."))
+			}
+			got = append(got, fmt.Sprintf("%s=%s%v", g.Name, strings.Join(g.Members, "+"), paths))
 		}
 		if strings.Join(got, " ") != want || len(faults) > 0 {
 			t.Errorf("%s: %q, want %q; %v", source, got, want, faults)
+		}
+	}
+}
+
+// TestMeant holds that a required key which is there under a wrong name or in a
+// wrong table is not missing too, and that what Parse refused is known.
+func TestMeant(t *testing.T) {
+	for source, want := range map[string]string{
+		"id = \"a\"\ntemprature = \"1 K\"\n":                        "temprature",
+		"id = \"a\"\n[species]\ntemperature = \"1 K\"\n":            "species.temperature",
+		"id = \"a\"\ntemprature = \"1 K\"\ntemperature = \"1 K\"\n": "temprature",
+	} {
+		var s sample
+		if _, faults := read(source, &s); len(faults) != 1 || faults[0].Key != want {
+			t.Errorf("%q: %v, want one fault, of %s", source, faults, want)
+		}
+	}
+	for source, want := range map[string]bool{"id = \"a\"\ntemperature = 1": false, "id = \"a\"\n[species]\nR = { H = nan }": true} {
+		var s sample
+		if n, _ := read(source, &s); n.Refused() != want {
+			t.Errorf("%q: refused %v", source, n.Refused())
 		}
 	}
 }

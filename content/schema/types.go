@@ -47,6 +47,7 @@ type Field struct {
 type Group struct {
 	Name    string
 	Members []string
+	Paths   [][]string // of the members, below the key of the field: {"2"} in a list, {"syn", "1"} in a table
 }
 
 // A NamedAmount is one entry of a table of quantities: { R = "0.20 M" }.

@@ -118,7 +118,7 @@ func (d *decoder) amount(n *Node, f Field) (unit.Quantity, bool) {
 	case Text:
 		q, err = unit.Parse(n.Text, d.bare(f), f.Dims...)
 	default:
-		d.report(n.At, found(n)+" stands where "+dims(f.Dims)+" is wanted", "write "+quote(f.Dims[0].Example()))
+		d.report(n.At, found(n)+" stands where "+dims(f.Dims)+" is wanted", "write it as in "+quote(f.Dims[0].Example()))
 		return q, false
 	}
 	if err != nil {
@@ -201,19 +201,25 @@ func (d *decoder) groups(n *Node, f Field) []Group {
 				d.report(kid.At, "the list is empty", "write the names that "+quote(kid.Key)+" stands for")
 				return
 			}
-			list = append(list, Group{kid.Key, d.members(kid, f)})
+			names, paths := d.members(kid, f)
+			for i := range paths {
+				paths[i] = append([]string{kid.Key}, paths[i]...)
+			}
+			list = append(list, Group{kid.Key, names, paths})
 		})
 		return list
 	}
-	for _, name := range d.members(n, f) {
-		list = append(list, Group{name, []string{name}})
+	names, paths := d.members(n, f)
+	for i, name := range names {
+		list = append(list, Group{name, []string{name}, paths[i : i+1]})
 	}
 	return list
 }
 
-// members reads a list of distinct names, or one name.
-func (d *decoder) members(n *Node, f Field) []string {
-	list := []string{}
+// members reads a list of distinct names, or one name, with the path of each
+// from n.
+func (d *decoder) members(n *Node, f Field) (list []string, paths [][]string) {
+	list = []string{}
 	d.list(n, f, func(kid *Node) {
 		msg, fix := "", ""
 		switch {
@@ -233,8 +239,13 @@ func (d *decoder) members(n *Node, f Field) []string {
 			return
 		}
 		list = append(list, kid.Text)
+		var path []string
+		if kid != n {
+			path = []string{kid.Key}
+		}
+		paths = append(paths, path)
 	})
-	return list
+	return list, paths
 }
 
 // bound reads a value to compare with.

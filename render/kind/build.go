@@ -4,6 +4,7 @@ import (
 	"errors"
 	"fmt"
 	"math"
+	"slices"
 	"strings"
 
 	"saddlebook/content/fault"
@@ -71,9 +72,12 @@ func (s *mechanismSource) build(in Inputs) (*kinetics.Mechanism, fault.Problems)
 		return nil, b.problems
 	}
 	for _, T := range s.temperatures() {
-		if _, err := m.At(T.SI); err != nil {
+		n, err := m.At(T.SI)
+		if err != nil {
 			b.refuse(err)
+			continue
 		}
+		b.diffusion(n, T)
 	}
 	return m, b.problems
 }
@@ -82,8 +86,12 @@ func (b *builder) fault(path []string, msg, fix string) {
 	b.problems = append(b.problems, problem(path, msg, fix))
 }
 
-// section tells in which table of the source a state stands.
+// section tells in which table of the source a state stands, or would stand if
+// the file beside the note did not declare it.
 func (b *builder) section(name string) string {
+	if b.table[name].reaction != "" {
+		return "step"
+	}
 	for _, st := range b.src.Step {
 		if st.Name == name {
 			return "step"
@@ -104,7 +112,17 @@ func (b *builder) complain(c kinetics.Complaint) {
 			path = append(path, c.Key)
 		}
 	}
-	b.problems = append(b.problems, &fault.Problem{Path: path, Severity: severity, Msg: c.Msg, Fix: c.Fix})
+	p := &fault.Problem{Path: path, Severity: severity, Msg: c.Msg, Fix: c.Fix}
+	if row, ok := b.table[c.State]; ok && !b.written(c.State) {
+		p.File, p.Line, p.Col = b.src.Table.File, row.line, 1
+	}
+	b.problems = append(b.problems, p)
+}
+
+// written tells whether a state stands in the block itself.
+func (b *builder) written(name string) bool {
+	return slices.ContainsFunc(b.src.Species, func(s speciesSource) bool { return s.Name == name }) ||
+		slices.ContainsFunc(b.src.Step, func(s stepSource) bool { return s.Name == name })
 }
 
 // refuse turns an error of the core into problems, without saying one twice.
@@ -154,7 +172,7 @@ func (b *builder) readEnergies(species []speciesSource, steps []stepSource) {
 				b.fault(append(p, "barrier"), "a barrier stands beside an energy of the transition state", "keep one of them")
 			}
 			path[st.Name] = p
-			b.energies[st.Name] = given{thermo.Constant(st.Barrier.SI), deviation(st.Barrier.SD)}
+			b.energies[st.Name] = given{energy: thermo.Constant(st.Barrier.SI), sd: deviation(st.Barrier.SD)}
 			continue
 		}
 		one("step", st.Name, st.energySource)
@@ -163,11 +181,14 @@ func (b *builder) readEnergies(species []speciesSource, steps []stepSource) {
 	for _, st := range steps {
 		known = append(known, st.Name)
 	}
+	circled := map[string]bool{} // states of which a circle is told
 	for _, name := range known {
 		seen := map[string]bool{}
 		at := name
+		var trail []string
 		for sameAs[at] != "" && !seen[at] {
 			seen[at] = true
+			trail = append(trail, at)
 			at = sameAs[at]
 		}
 		if sameAs[name] == "" {
@@ -175,8 +196,12 @@ func (b *builder) readEnergies(species []speciesSource, steps []stepSource) {
 		}
 		g, ok := b.energies[at]
 		switch {
+		case seen[at] && circled[at]:
 		case seen[at]:
-			b.fault(append(path[name], "same-as"), fmt.Sprintf("same-as of %q leads back to itself", name), "give one of these states an energy")
+			for _, s := range trail {
+				circled[s] = true
+			}
+			b.fault(append(path[name], "same-as"), "same-as leads in a circle: "+strings.Join(append(trail, at), ", "), "give one of these states an energy")
 		case !ok:
 			b.fault(append(path[name], "same-as"), fmt.Sprintf("%q is not a state of this mechanism", at), suggest(at, known))
 		default:
@@ -184,17 +209,6 @@ func (b *builder) readEnergies(species []speciesSource, steps []stepSource) {
 			b.energies[name] = g
 		}
 	}
-}
-
-// twin notes that two states have one energy, and so one error.
-func (b *builder) twin(first, other string) {
-	for i := range b.twins {
-		if b.twins[i][0] == first {
-			b.twins[i] = append(b.twins[i], other)
-			return
-		}
-	}
-	b.twins = append(b.twins, []string{first, other})
 }
 
 func (b *builder) standard(own string) rate.Standard {
@@ -215,9 +229,19 @@ func (b *builder) species(s speciesSource) kinetics.Species {
 		b.fault([]string{"species", s.Name, "forms"}, fmt.Sprintf("%d forms make no sense", s.Forms), "give 1 or more")
 	}
 	g := b.energies[s.Name]
-	sp := kinetics.Species{Name: s.Name, Label: s.Label, Source: s.Source, Energy: g.energy, Forms: s.Forms, Standard: b.standard(s.Standard), SD: g.sd}
-	if sp.SD == nil && b.src.Error != nil && b.src.Error.Species != nil {
+	sp := kinetics.Species{Name: s.Name, Label: s.Label, Source: s.Source, Energy: g.energy, Forms: s.Forms, Standard: b.standard(s.Standard), SD: g.sd, SDEntropy: g.sdEntropy}
+	if sp.SD == nil && sp.SDEntropy == nil && b.src.Error != nil && b.src.Error.Species != nil {
 		sp.SD = deviation(b.src.Error.Species.SI)
+	}
+	if s.Formula != "" {
+		sp.Formula = s.Formula
+		_, err := kinetics.ParseFormula(s.Formula)
+		var bad *kinetics.FormulaError
+		if errors.As(err, &bad) {
+			p := problem([]string{"species", s.Name, "formula"}, bad.Msg, bad.Fix)
+			p.Char = bad.At
+			b.problems = append(b.problems, p)
+		}
 	}
 	if row, ok := b.table[s.Name]; ok {
 		sp.Label, sp.Source = or(sp.Label, row.label), or(sp.Source, or(row.source, b.src.Table.File))
@@ -228,8 +252,8 @@ func (b *builder) species(s speciesSource) kinetics.Species {
 func (b *builder) step(s stepSource) kinetics.Step {
 	g := b.energies[s.Name]
 	st := kinetics.Step{Name: s.Name, Label: s.Label, Source: s.Source, Energy: g.energy, Above: s.Barrier != nil,
-		Degeneracy: 1, Transmission: 1, Standard: b.standard(s.Standard), SD: g.sd}
-	if st.SD == nil && b.src.Error != nil && b.src.Error.Step != nil {
+		Degeneracy: 1, Transmission: 1, Standard: b.standard(s.Standard), SD: g.sd, SDEntropy: g.sdEntropy}
+	if st.SD == nil && st.SDEntropy == nil && b.src.Error != nil && b.src.Error.Step != nil {
 		st.SD = deviation(b.src.Error.Step.SI)
 	}
 	row, tabled := b.table[s.Name]
@@ -264,7 +288,7 @@ func (b *builder) step(s stepSource) kinetics.Step {
 		p := sumProblem(append(path, "reaction"), err, b.names)
 		p.Fix = strings.Replace(p.Fix, "a sum such as \"R + X\"", "a reaction such as \"R + X <=> A\"", 1)
 		if tabled && s.Reaction == "" {
-			p.File, p.Line, p.Col = b.src.Table.File, row.line, 1
+			p.File, p.Line, p.Col = b.src.Table.File, row.line, row.reactionCol
 		}
 		b.problems = append(b.problems, p)
 		return st
@@ -282,25 +306,7 @@ func (b *builder) sharing(m *kinetics.Mechanism) {
 		}
 		index[n] = i
 	}
-	for _, twins := range b.twins { // one error moves them all
-		c := kinetics.Common{}
-		for _, name := range twins {
-			k := index[name]
-			c.States = append(c.States, k)
-			own := &m.Species[min(k, len(m.Species)-1)].SD
-			if k >= len(m.Species) {
-				own = &m.Steps[k-len(m.Species)].SD
-			}
-			if *own != nil {
-				c.SD = **own
-			}
-			*own = nil
-		}
-		if c.SD == 0 {
-			continue
-		}
-		m.Common = append(m.Common, c)
-	}
+	b.shareTwins(m, index)
 	for i, sh := range b.src.Shared {
 		c := kinetics.Common{SD: sh.SD.SI}
 		for j, name := range sh.Of {
@@ -328,36 +334,6 @@ func (b *builder) sharing(m *kinetics.Mechanism) {
 		}
 		all(e.SharedSpecies, 0, len(m.Species))
 		all(e.SharedStep, len(m.Species), len(m.Species)+len(m.Steps))
-	}
-}
-
-// mirror checks that the enantiomers exist and have one energy.
-func (b *builder) mirror(m *kinetics.Mechanism) {
-	names := b.src.Enantiomers
-	if len(names) == 0 {
-		return
-	}
-	if len(names) != 2 {
-		b.fault([]string{"enantiomers"}, fmt.Sprintf("%d enantiomers are named", len(names)), "name the two of one pair, such as [\"R\", \"S\"]")
-		return
-	}
-	var pair []kinetics.Species
-	for i, name := range names {
-		k := m.Index(name)
-		if k < 0 {
-			b.problems = append(b.problems, unknownSpecies(m, name, []string{"enantiomers", fmt.Sprint(i + 1)}))
-			continue
-		}
-		pair = append(pair, m.Species[k])
-	}
-	if len(pair) < 2 {
-		return
-	}
-	for _, T := range append(b.src.temperatures(), b.src.Temperature) {
-		if x, y := pair[0].Energy.At(T.SI), pair[1].Energy.At(T.SI); math.Abs(x-y) > 1e-6 {
-			b.fault([]string{"enantiomers"}, fmt.Sprintf("%q and %q have different energies, and enantiomers have the same", names[0], names[1]), fmt.Sprintf("write %s = { same-as = %q }", names[1], names[0]))
-			return
-		}
 	}
 }
 

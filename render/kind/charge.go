@@ -46,11 +46,11 @@ func concentrations(m *kinetics.Mechanism, charge []schema.NamedAmount, basis st
 		case i < 0:
 			ps = append(ps, unknownSpecies(m, a.Name, path))
 		case a.Quantity.SI < 0:
-			ps = append(ps, problem(path, fmt.Sprintf("%s is negative", a.Quantity), "charge 0 or more"))
+			ps = append(ps, problem(path, fmt.Sprintf("%q is negative", a.Quantity), "charge 0 or more"))
 		case a.Quantity.SD != 0:
-			ps = append(ps, problem(path, fmt.Sprintf("the ± of %s is not carried on", a.Quantity), "leave out the ±"))
+			ps = append(ps, problem(path, fmt.Sprintf("the ± of %q is not carried on", a.Quantity), "leave out the ±"))
 		case a.Quantity.Unit.Dim == unit.Equivalent && basis == "":
-			ps = append(ps, problem(path, fmt.Sprintf("%s has no basis", a.Quantity), "add basis = \"NAME\", the species that equiv and mol% refer to"))
+			ps = append(ps, problem(path, fmt.Sprintf("%q has no basis", a.Quantity), "add basis = \"NAME\", the species that equiv and mol% refer to"))
 		case a.Quantity.Unit.Dim == unit.Equivalent:
 			c[i] = a.Quantity.SI * base
 		default:
@@ -79,20 +79,35 @@ func groupsOf(m *kinetics.Mechanism, groups []schema.Group, key string) ([][]int
 	owner := map[string]string{}
 	out := make([][]int, len(groups))
 	for g, group := range groups {
-		for _, name := range group.Members {
+		for k, name := range group.Members {
+			path := []string{key}
+			if k < len(group.Paths) {
+				path = append(path, group.Paths[k]...)
+			}
 			i := speciesIndex(m, name)
 			if i < 0 {
-				ps = append(ps, unknownSpecies(m, name, []string{key, group.Name}))
+				ps = append(ps, unknownSpecies(m, name, path))
 				continue
 			}
 			if other, twice := owner[name]; twice {
-				ps = append(ps, problem([]string{key, group.Name}, fmt.Sprintf("%q is counted in %q already", name, other), "name each species once"))
+				ps = append(ps, problem(path, fmt.Sprintf("%q is counted in %q already", name, other), "name each species once"))
 			}
 			owner[name] = group.Name
 			out[g] = append(out[g], i)
 		}
 	}
 	return out, ps
+}
+
+// groupLabel is how figures and tables name a product: by the label of its one
+// species, or by its own name.
+func groupLabel(m *kinetics.Mechanism, g schema.Group) string {
+	if len(g.Members) == 1 && g.Members[0] == g.Name {
+		if i := speciesIndex(m, g.Name); i >= 0 {
+			return or(m.Species[i].Label, g.Name)
+		}
+	}
+	return g.Name
 }
 
 // ratioNumber is a over b; an infinite or undefined one is nothing, with words in its place.

@@ -5,6 +5,7 @@ import (
 	"errors"
 	"fmt"
 	"math"
+	"strings"
 
 	"saddlebook/content/fault"
 	"saddlebook/content/schema"
@@ -113,6 +114,9 @@ func (c claimSource) judge(i int, in Inputs) (Finding, *fault.Problem, error) {
 	case err != nil:
 		return f, nil, err
 	}
+	if r.Value.Kind == Words {
+		return f, problem(claimPath(i, "reading"), fmt.Sprintf("%q is a word, %q, and has no bounds", c.Reading, r.Value.Text), "name a result that is a number, such as position in place of character"), nil
+	}
 	low, high := math.Inf(-1), math.Inf(1)
 	for _, b := range []struct {
 		key   string
@@ -151,6 +155,9 @@ func (c claimSource) judge(i int, in Inputs) (Finding, *fault.Problem, error) {
 		return f, nil, err
 	}
 	c.weigh(&f, draws, low, high)
+	if len(r.Assumes) > 0 {
+		f.Why += "; it rests on this: " + strings.Join(r.Assumes, "; ")
+	}
 	return f, nil, nil
 }
 
@@ -169,21 +176,19 @@ func (c claimSource) weigh(f *Finding, d Draws, low, high float64) {
 			least, which = p, one.Case.String()
 		}
 	}
-	if len(d.Cases) > 0 {
-		f.Probability = probability(least)
-		f.Why = "errors " + which
+	switch {
+	case len(d.Cases) == 0:
+		f.Why = "no energy behind it has a ±"
+	case len(d.Exact) > 0:
+		f.Why = "these energies have no ±: " + listWords(d.Exact)
+	default:
+		f.Probability, f.Why = probability(least), "errors "+which
 	}
 	if c.Probability == nil {
 		return
 	}
 	f.Asked = probability(*c.Probability)
-	switch {
-	case f.Standing == Fails:
-	case len(d.Cases) == 0:
-		f.Standing, f.Why = Undecided, "no energy behind it has a ±"
-	case len(d.Exact) > 0:
-		f.Standing, f.Why = Undecided, "these energies have no ±: "+listWords(d.Exact)
-	case least < *c.Probability:
+	if f.Standing == Holds && (f.Probability == "" || least < *c.Probability) {
 		f.Standing = Undecided
 	}
 }
@@ -201,31 +206,35 @@ func probability(p float64) string {
 
 // boundFor turns a bound into the base quantity of a result.
 func boundFor(r Result, b *schema.Bound) (float64, *fault.Problem) {
-	wrong := func(fix string) (float64, *fault.Problem) {
-		return 0, problem(nil, fmt.Sprintf("%q cannot bound %q", b.Text, r.Key.Local()), fix)
-	}
+	what, like := r.Unit.Dim.String(), r.Unit.Dim.Example()
 	switch {
-	case r.Value.Kind == Words:
-		return wrong("a word has no bounds: name a number, such as position in place of character")
-	case b.Ratio && r.Form != unit.FormRatio:
-		return wrong("write a number" + inUnit(r))
-	case b.Quantity != nil && b.Quantity.Unit.Dim != r.Unit.Dim:
-		return wrong("write a value" + inUnit(r))
-	case b.Quantity != nil && b.Quantity.SD != 0:
-		return wrong("leave out the ±: a bound is exact")
-	case b.Quantity != nil:
+	case r.Form == unit.FormRatio:
+		what, like = "a ratio", "15:1"
+	case r.Unit.Symbol == "%":
+		what, like = "a percentage", "90 %"
+	case r.Unit.Dim == unit.None:
+		what, like = "a number without a unit", "0.9"
+	}
+	fits := b.Quantity != nil && b.Quantity.Unit.Dim == r.Unit.Dim
+	switch {
+	case r.Form == unit.FormRatio:
+		fits = b.Quantity == nil // 80 % of what is no ratio
+	case b.Ratio:
+		fits = false
+	case b.Quantity == nil:
+		fits = r.Unit.Dim == unit.None && (r.Unit.Symbol != "%" || math.Abs(b.Value) <= 1) // 90 was meant as 90 %
+	}
+	if !fits {
+		fix := fmt.Sprintf("write it as in %q", like)
+		if b.Quantity == nil && !b.Ratio && r.Unit.Symbol != "" {
+			fix = fmt.Sprintf("write its unit, as in %q", b.Text+" "+r.Unit.Symbol)
+		}
+		return 0, problem(nil, fmt.Sprintf("%q cannot bound %q, which is %s", b.Text, r.Key.Local(), what), fix)
+	}
+	if b.Quantity != nil {
 		return b.Quantity.SI, nil
-	case b.Ratio, r.Unit.Dim == unit.None:
-		return b.Value, nil
 	}
-	return wrong("write its unit: a value" + inUnit(r))
-}
-
-func inUnit(r Result) string {
-	if r.Unit.Symbol == "" {
-		return " without a unit"
-	}
-	return fmt.Sprintf(" in %s", r.Unit.Symbol)
+	return b.Value, nil
 }
 
 func boundWords(r Result, c claimSource) string {
@@ -274,6 +283,9 @@ func margin(r Result, x, low, high float64) string {
 	d := x - near
 	if near == high {
 		d = near - x
+	}
+	if r.Form == unit.FormPercent {
+		return unit.Fixed(100*d, 1) + " points"
 	}
 	return r.PrintBound(d)
 }

@@ -66,10 +66,11 @@ func energyFields() []schema.Field {
 	}...)
 }
 
-// given is an energy as read, with its own standard deviation at temperature T.
+// given is an energy as read, with its own standard deviations.
 type given struct {
-	energy thermo.Energy
-	sd     *float64
+	energy    thermo.Energy
+	sd        *float64 // J/mol
+	sdEntropy *float64 // J/mol/K
 }
 
 // read turns one set of G, H, S and Cp into an energy. path leads to the set,
@@ -77,9 +78,9 @@ type given struct {
 func readAmounts(c conformerSource, home float64, path []string) (given, *fault.Problem) {
 	switch {
 	case c.G != nil && (c.H != nil || c.S != nil || c.Cp != nil):
-		return given{}, problem(path, "G stands beside H, S or Cp", "give either G, or H with S")
+		return given{}, problem(append(path, "G"), "G stands beside H, S or Cp", "give either G, or H with S")
 	case c.G != nil:
-		return given{thermo.Constant(c.G.SI), deviation(c.G.SD)}, nil
+		return given{energy: thermo.Constant(c.G.SI), sd: deviation(c.G.SD)}, nil
 	case c.H != nil && c.S != nil:
 		cp, cpSD := 0.0, 0.0
 		if c.Cp != nil {
@@ -88,11 +89,13 @@ func readAmounts(c conformerSource, home float64, path []string) (given, *fault.
 		if cpSD != 0 {
 			return given{}, problem(append(path, "Cp"), "a ± on Cp is not carried on", "give the ± on H or S")
 		}
-		return given{thermo.Energy{Heat: &thermo.Heat{H: c.H.SI, S: c.S.SI, Cp: cp, T0: home}}, deviation(math.Hypot(c.H.SD, home*c.S.SD))}, nil
+		return given{thermo.Energy{Heat: &thermo.Heat{H: c.H.SI, S: c.S.SI, Cp: cp, T0: home}}, deviation(c.H.SD), deviation(c.S.SD)}, nil
 	case c.H != nil:
-		return given{}, problem(path, "H has no S beside it", "add S, such as S = \"-24.6 cal/mol/K\", or give G")
-	case c.S != nil || c.Cp != nil:
-		return given{}, problem(path, "S or Cp has no H beside it", "add H, or give G")
+		return given{}, problem(append(path, "H"), "H has no S beside it", "add S, such as S = \"-24.6 cal/mol/K\", or give G")
+	case c.S != nil:
+		return given{}, problem(append(path, "S"), "S has no H beside it", "add H, or give G")
+	case c.Cp != nil:
+		return given{}, problem(append(path, "Cp"), "Cp has no H and S beside it", "add both, or give G")
 	}
 	return given{}, problem(path, "no energy is given", "give G, or H with S, or conformers, or same-as")
 }
@@ -125,6 +128,9 @@ func (e energySource) read(home float64, path []string) (given, *fault.Problem) 
 		if p != nil {
 			return given{}, p
 		}
+		if g.sdEntropy != nil {
+			return given{}, problem(append(path, "conformers", fmt.Sprint(i+1), "S"), "a ± on the entropy of a conformer is not carried on", "give the ± on its H")
+		}
 		if g.sd != nil {
 			sd = math.Max(sd, *g.sd)
 		}
@@ -134,7 +140,7 @@ func (e energySource) read(home float64, path []string) (given, *fault.Problem) 
 	if sum.Mixed() {
 		return given{}, problem(append(path, "conformers"), "some conformers follow temperature and some do not", "give all of them as G, or all as H with S")
 	}
-	return given{sum, deviation(sd)}, nil
+	return given{energy: sum, sd: deviation(sd)}, nil
 }
 
 func problem(path []string, msg, fix string) *fault.Problem {

@@ -57,8 +57,10 @@ type equilibriumSource struct {
 }
 
 type equilibriumValue struct {
-	Names []string
-	At    []restValue
+	Names  []string
+	Labels []string // of the names, for figures and tables
+	OneWay []string // steps without return, left out
+	At     []restValue
 }
 
 type restValue struct {
@@ -87,15 +89,19 @@ func (s *equilibriumSource) rest(m *kinetics.Mechanism) (equilibriumValue, error
 	if ps = append(ps, more...); len(ps) > 0 {
 		return v, ps
 	}
+	total := 0.0
 	for i, c := range charge {
 		if math.IsNaN(c) {
 			charge[i] = 0
 		}
+		total += charge[i]
 	}
-	var oneWay []string
+	if total == 0 {
+		return v, fault.Problems{problem([]string{"charge"}, "every amount charged is 0", "charge more than 0 of at least one species")}
+	}
 	for _, st := range m.Steps {
 		if !st.Returns {
-			oneWay = append(oneWay, st.Name)
+			v.OneWay = append(v.OneWay, st.Name)
 		}
 	}
 	present := make([]bool, len(among))
@@ -115,14 +121,15 @@ func (s *equilibriumSource) rest(m *kinetics.Mechanism) (equilibriumValue, error
 			}
 			present[g] = present[g] || row.Amounts[g] > 0 || len(s.Among) > 0
 		}
-		if len(oneWay) > 0 {
-			row.Assumes = append(row.Assumes, fmt.Sprintf("steps without return (%s) are left out of the equilibrium", listWords(oneWay)))
+		if len(v.OneWay) > 0 {
+			row.Assumes = append(row.Assumes, "steps without return are left out: "+listWords(v.OneWay))
 		}
 		v.At = append(v.At, row)
 	}
 	for g, group := range among {
 		if present[g] {
 			v.Names = append(v.Names, group.Name)
+			v.Labels = append(v.Labels, groupLabel(m, group))
 		}
 	}
 	for i := range v.At {
@@ -180,12 +187,12 @@ func (s *equilibriumSource) present(v equilibriumValue, sheet *paper.Sheet) {
 		}
 		for i, name := range v.Names {
 			share := sheet.Value("share/" + name + cond)
-			numbers.Rows = append(numbers.Rows, []paper.Cell{paper.Text(at), paper.Text(name), share, sheet.Value("amount/" + name + cond)})
+			numbers.Rows = append(numbers.Rows, []paper.Cell{paper.Text(at), paper.Text(v.Labels[i]), share, sheet.Value("amount/" + name + cond)})
 			low, high := sheet.Ends("share/" + name + cond)
-			group.Bars = append(group.Bars, diagram.Bar{Name: name, Share: row.Amounts[i] / total, Text: share.Text, Low: low, High: high})
+			group.Bars = append(group.Bars, diagram.Bar{Name: v.Labels[i], Share: row.Amounts[i] / total, Text: share.Text, Low: low, High: high})
 			sure = append(sure, "share/"+name+cond)
 			if x := row.Amounts[i] / total; x > leadShare {
-				lead, leadShare = fmt.Sprintf("%s leads with %s at %s", name, share.Text, at), x
+				lead, leadShare = fmt.Sprintf("%s leads with %s at %s", v.Labels[i], share.Text, at), x
 			}
 		}
 		bars.Groups = append(bars.Groups, group)
@@ -194,6 +201,9 @@ func (s *equilibriumSource) present(v equilibriumValue, sheet *paper.Sheet) {
 		}
 	}
 	bars.Desc = fmt.Sprintf("Shares at equilibrium: %s.", lead)
+	if len(v.OneWay) > 0 {
+		sheet.Caution(fmt.Sprintf("This is where the reversible steps alone come to rest. Steps without return (%s) would carry it on.", listWords(v.OneWay)))
+	}
 	scene, err := bars.Scene()
 	if err != nil {
 		sheet.Fail(err)
@@ -206,5 +216,6 @@ func (s *equilibriumSource) present(v equilibriumValue, sheet *paper.Sheet) {
 	for _, a := range s.Charge {
 		charged = append(charged, fmt.Sprintf("%s %s", a.Name, a.Quantity))
 	}
+	sheet.Assumption("A share is of the molecules of the species shown, so two molecules joined in one count once.")
 	sheet.Assumption("Charged: " + listWords(charged) + ". Ideal solution: activities are concentrations.")
 }

@@ -84,8 +84,11 @@ func ParseKey(text string) (Key, error) {
 	for i := range parts {
 		parts[i] = strings.TrimSpace(parts[i])
 	}
-	if len(parts) < 2 || len(parts) > 3 {
-		return k, fmt.Errorf("%w: %q has %d parts", ErrKey, text, len(parts))
+	if len(parts) < 2 {
+		return k, fmt.Errorf("%w: %q names a block and none of its results", ErrKey, text)
+	}
+	if len(parts) > 3 {
+		return k, fmt.Errorf("%w: %q has %d parts, and ID/quantity/item are three", ErrKey, text, len(parts))
 	}
 	for _, p := range parts {
 		if p == "" {

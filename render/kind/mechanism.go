@@ -80,6 +80,7 @@ type mechanismSource struct {
 	Method      string          `key:"method"`
 	HalfLifeAt  *unit.Quantity  `key:"half-life-at"`
 	Enantiomers []string        `key:"enantiomers"`
+	Viscosity   *unit.Quantity  `key:"viscosity"`
 	Error       *errorSource    `key:"error"`
 	Shared      []sharedSource  `key:"shared"`
 	Table       *tableSource    `key:"table"`
@@ -109,6 +110,7 @@ var mechanismFields = []schema.Field{
 	{Key: "method", Doc: "where the energies come from, printed as provenance", Type: schema.Text, Example: "functional/basis, solvent model"},
 	{Key: "half-life-at", Doc: "the concentration of the other molecules for half-lives of steps of more than one", Type: schema.Amount, Dims: []unit.Dim{unit.Concentration}, Default: "1 M", Example: "0.2 M"},
 	{Key: "enantiomers", Doc: "two species that mirror each other; a step between them racemises", Type: schema.Words, Wants: "species", Example: `["R", "S"]`},
+	{Key: "viscosity", Doc: "of the solvent, for the diffusion limit that steps of two molecules are held against", Type: schema.Amount, Dims: []unit.Dim{unit.Viscosity}, Default: "1 mPa s", Example: "0.6 mPa s"},
 	{Key: "error", Doc: "standard deviations where a state gives none of its own", Type: schema.Table, Fields: []schema.Field{
 		{Key: "species", Doc: "own error of each species", Type: schema.Amount, Dims: []unit.Dim{unit.MolarEnergy}, Bare: "@energies", Example: "0.5 kcal/mol"},
 		{Key: "step", Doc: "own error of each transition state", Type: schema.Amount, Dims: []unit.Dim{unit.MolarEnergy}, Bare: "@energies", Example: "0.8 kcal/mol"},
@@ -131,7 +133,7 @@ var mechanismFields = []schema.Field{
 	{Key: "step", Doc: "the elementary steps, by the name of their transition state", Type: schema.Named, Fields: append([]schema.Field{
 		{Key: "reaction", Doc: "what goes to what; <=> is reversible, -> has no return", Type: schema.Text, Example: "R + X <=> A"},
 		{Key: "barrier", Doc: "free energy of activation above the reactants, in place of an energy", Type: schema.Amount, Dims: []unit.Dim{unit.MolarEnergy}, Bare: "@energies", Example: "22.4"},
-		{Key: "degeneracy", Doc: "number of equivalent paths, in both directions", Type: schema.Real, Default: "1"},
+		{Key: "degeneracy", Doc: "number of equivalent paths, in both directions", Type: schema.Real, Default: "1", Example: "2"},
 		{Key: "transmission", Doc: "transmission coefficient, in both directions", Type: schema.Real, Default: "1"},
 	}, energyFields()...)},
 }

@@ -5,6 +5,7 @@ import (
 	"strings"
 
 	"saddlebook/kinetics"
+	"saddlebook/kinetics/rate"
 	"saddlebook/kinetics/unit"
 	"saddlebook/render/paper"
 )
@@ -17,6 +18,7 @@ func presentMechanism(s *mechanismSource, v mechanismValue, sheet *paper.Sheet) 
 	if energy == "kJ/mol" {
 		beside = "kcal/mol"
 	}
+	var sure []string
 	for i, T := range s.temperatures() {
 		cond := ConditionText(T)
 		t := paper.Table{
@@ -24,7 +26,7 @@ func presentMechanism(s *mechanismSource, v mechanismValue, sheet *paper.Sheet) 
 			Columns: []paper.Column{
 				{Head: "Step"}, {Head: "Reaction"},
 				{Head: "ΔG‡", Unit: energy, Number: true}, {Head: "ΔG‡ back", Unit: energy, Number: true}, {Head: "ΔG", Unit: energy, Number: true},
-				{Head: "k", Number: true}, {Head: "K", Number: true}, {Head: "Half-life", Number: true}, {Head: "χ", Number: true},
+				{Head: "k", Number: true}, {Head: "K", Number: true}, {Head: s.halfLifeHead(v), Number: true}, {Head: "χ", Number: true},
 			},
 		}
 		for j, st := range m.Steps {
@@ -45,33 +47,50 @@ func presentMechanism(s *mechanismSource, v mechanismValue, sheet *paper.Sheet) 
 				return c
 			}
 			name := paper.Text(or(st.Label, st.Name))
-			if !st.Returns {
-				name.Flags = append(name.Flags, "no return")
+			name.Flags = stepFlags(st)
+			life := value("half-life", row.HalfLife > 0)
+			if row.HalfLifeBack > 0 {
+				life.Beside = "back " + sheet.Value(key("half-life-back")).Text
 			}
 			chi := sheet.Value(key("position"))
 			chi.Beside = sheet.Value(key("character")).Text
 			t.Rows = append(t.Rows, []paper.Cell{
 				name, paper.Text(reactionText(m, st)),
 				energyCell("barrier", row.Barrier, true), energyCell("barrier-back", row.BarrierBack, st.Returns), energyCell("reaction-energy", row.Reaction, true),
-				value("rate", true), value("equilibrium-constant", st.Returns), value("half-life", row.HalfLife > 0), chi,
+				value("rate", true), value("equilibrium-constant", st.Returns), life, chi,
 			})
 		}
 		sheet.Table(t)
+		for _, st := range m.Steps {
+			at := "/" + st.Name + "@" + cond
+			sure = append(sure, "barrier"+at, "rate"+at)
+		}
+		for j, st := range m.Steps {
+			if v.Steps[i][j].HalfLife > 0 {
+				sure = append(sure, "half-life/"+st.Name+"@"+cond)
+			}
+			if s.racemises(m, st) {
+				sure = append(sure, "ee-loss/"+st.Name+"@"+cond)
+			}
+		}
 		for _, h := range v.Held[i] {
 			sheet.Assumption(h)
 		}
 	}
 	presentRacemisation(s, v, sheet)
+	sheet.Table(s.energyTable(v))
+	sheet.Intervals(sure...)
 	sheet.Method("Rate constants: Eyring equation with the exact constants of 2019; equilibrium constants from the free energies, so that each reversible step obeys detailed balance. Position: the Marcus relation χ = √f / (√f + √b) of the forward and back barriers f and b; early below 0.45, late above 0.55.")
 	sheet.Assumption("Transmission coefficients and path degeneracies are 1 unless the block says otherwise; they act in both directions.")
-	sheet.Assumption(fmt.Sprintf("Free energies are taken at 1 M; given ones were at %s.", or(s.Standard, "1 M")))
+	sheet.Assumption(s.standardWords())
 	several, change := false, false
 	for _, row := range v.Steps[0] {
 		several = several || row.Molecules > 1 || row.MoleculesBack > 1
 		change = change || row.Change != 0
 	}
+	sheet.Assumption("Half-lives are those of the one direction alone, as if nothing came back.")
 	if several {
-		sheet.Assumption(fmt.Sprintf("Half-lives of steps of more than one molecule are those of the reactant with the others held at %s.", s.others()))
+		sheet.Assumption(fmt.Sprintf("The half-life of a step of more than one molecule is that of its first reactant with the others held at %s; of several molecules of one kind, from that concentration to half of it.", s.others()))
 	}
 	if change {
 		sheet.Assumption("Where the number of molecules changes in a step, the position of its transition state depends on the standard state of 1 M.")
@@ -83,6 +102,43 @@ func presentMechanism(s *mechanismSource, v mechanismValue, sheet *paper.Sheet) 
 		sheet.Method(src)
 	}
 	describeErrors(v, sheet)
+}
+
+// standardWords says at which standard states the energies were given.
+func (s *mechanismSource) standardWords() string {
+	others := map[string][]string{}
+	for _, sp := range s.Species {
+		if sp.Standard != "" {
+			others[sp.Standard] = append(others[sp.Standard], sp.Name)
+		}
+	}
+	for _, st := range s.Step {
+		if st.Standard != "" {
+			others[st.Standard] = append(others[st.Standard], st.Name)
+		}
+	}
+	given := or(s.Standard, "1 M")
+	delete(others, given)
+	if given == "1 M" && len(others) == 0 {
+		return "Free energies are given and taken at 1 M."
+	}
+	text := "Free energies are taken at 1 M; they were given at " + given
+	for _, state := range []string{"1 M", "1 atm", "1 bar"} {
+		if len(others[state]) > 0 {
+			text += fmt.Sprintf(", those of %s at %s", listWords(others[state]), state)
+		}
+	}
+	T := s.temperatures()[0]
+	for _, p := range []struct {
+		name     string
+		pressure float64
+	}{{"1 atm", unit.Atmosphere}, {"1 bar", unit.Bar}} {
+		if given == p.name || len(others[p.name]) > 0 {
+			shift := rate.Standard{Pressure: p.pressure}.Shift(T.SI)
+			text += fmt.Sprintf("; from %s each is raised by RT ln(c° RT/p°), %s at %s", p.name, unit.Print(shift, unit.Must("kcal/mol"), unit.FormEnergy), unit.Print(T.SI, T.Unit, unit.FormPlain))
+		}
+	}
+	return text + "."
 }
 
 // presentRacemisation sets both constants of a step between enantiomers side by
@@ -116,7 +172,7 @@ func describeErrors(v mechanismValue, sheet *paper.Sheet) {
 	if len(v.Exact) > 0 {
 		sheet.Assumption("Taken as exact, since no ± is given: " + listWords(v.Exact) + ".")
 	}
-	if !m.SharingStated {
+	if len(m.Plans()) > 1 {
 		sheet.Assumption("No shared error is stated: intervals were computed with independent errors and with errors of the transition states correlated at 0.9.")
 	}
 }

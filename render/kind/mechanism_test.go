@@ -85,3 +85,54 @@ func TestMechanismHeldConstantIsFlagged(t *testing.T) {
 		t.Errorf("the price over 103 K is not 3.1 kcal/mol: %q", a)
 	}
 }
+
+// A formula that cannot be read stands at its own character; a step that does
+// not balance stands at its reaction.
+func TestFormulas(t *testing.T) {
+	note := func(r, x, a string) string {
+		return "# T\n\n```toml mechanism\nid = \"m\"\ntemperature = \"25 °C\"\n[species]\nR = { G = 0, formula = \"" + r + "\" }\nX = { G = 0" + x + " }\nA = { G = -2, formula = \"" + a +
+			"\" }\n[step]\nTS = { reaction = \"R + X <=> A\", G = 19.5 }\n```\n"
+	}
+	good(t, note("C6H10O", `, formula = "CH3OH"`, "C7H14O2"), nil)
+	for _, tt := range []struct{ name, note, want string }{
+		{"unreadable", note("SO42-", `, formula = "H2"`, "H2SO4"),
+			`note.md:7:27: error: mechanism "m", species.R.formula: "42-" at the end of formula "SO42-" can be read two ways; write SO42^- if 42 is a count, or SO4^2- if the charge is 2-`},
+		{"unbalanced", note("C6H10O", `, formula = "HCN"`, "C7H10NO-"),
+			`note.md:11:19: error: mechanism "m", step.TS.reaction: step TS loses 1 H and gains charge −1: left C7H11NO, right C7H10NO⁻; name what is missing on the right side (H⁺), or correct the formula of R, X or A`},
+		{"partial", note("C6H10O", "", "C7H14O2"),
+			`note.md:8:1: warning: mechanism "m", species.X: X has no formula and others in the same step do, so the atoms of step TS are not checked; give it a formula, or leave formulas out of the whole step`},
+	} {
+		t.Run(tt.name, func(t *testing.T) {
+			_, faults := evaluate(t, tt.note, nil)
+			var b strings.Builder
+			faults.Write(&b)
+			if strings.TrimSpace(b.String()) != tt.want {
+				t.Errorf("got  %swant %s", b.String(), tt.want)
+			}
+		})
+	}
+}
+
+// An error of an entropy grows with temperature: the standard deviation of
+// H - TS is that of both parts together, at the temperature in use.
+func TestErrorOfAnEntropyFollowsTemperature(t *testing.T) {
+	note := "# T\n\n```toml mechanism\n" + `id = "m"
+temperature = "25 °C"
+at = ["-78 °C", "25 °C", "150 °C"]
+[species]
+R = { H = 0, S = 0 }
+P = { H = -5, S = "0 cal/mol/K" }
+[step]
+TS = { reaction = "R <=> P", H = "18 ± 1", S = "-10 ± 4 cal/mol/K" }
+TT = { reaction = "R <=> P", same-as = "TS" }
+` + "```\n"
+	s := good(t, note, nil)
+	for at, T := range map[string]float64{"@-78 °C": cold, "@25 °C": 298.15, "@150 °C": 423.15} {
+		r := result(t, s, "m/barrier/TS"+at)
+		half := (*r.High - *r.Low) / 2
+		want := 1.6448536269514722 * math.Hypot(1, 0.004*T) * 1000 * calorie
+		near(t, "half width"+at, half, want, 0.02)
+		twin := result(t, s, "m/barrier/TT"+at)
+		near(t, "the same of its twin"+at, (*twin.High-*twin.Low)/2, half, 1e-12)
+	}
+}

@@ -67,15 +67,17 @@ func (s *mechanismSource) tabulate(m *kinetics.Mechanism) (mechanismValue, error
 	return v, nil
 }
 
-// halfLife is ln 2/k for one molecule; for more, of the reactant while all
-// others stay at the stated concentration c (mol/L). Zero: not a finite time.
+// halfLife is ln 2/k for one molecule; for several of one kind, from the stated
+// concentration c (mol/L) to half of it; for several kinds, of the first while
+// the others stay at c. Zero: not a finite time.
 func halfLife(k float64, molecules int, side []kinetics.Term, c float64) float64 {
 	t := 0.0
 	switch {
 	case molecules == 1:
 		t = rate.HalfLife(k)
-	case len(side) == 1 && molecules == 2: // 2 A loses 2 r: from c to c/2
-		t = 1 / (2 * k * c)
+	case len(side) == 1: // n A loses n r: from c to c/2
+		n := float64(molecules)
+		t = (math.Pow(2, n-1) - 1) / ((n - 1) * n * k * math.Pow(c, n-1))
 	default:
 		t = rate.HalfLife(k * math.Pow(c, float64(molecules-1)))
 	}
@@ -159,7 +161,7 @@ func (s *mechanismSource) halfLifeNote(molecules int) []string {
 	if molecules == 1 {
 		return nil
 	}
-	return []string{fmt.Sprintf("half-lives of steps of more than one molecule are given with the others at %s", s.others())}
+	return []string{fmt.Sprintf("the half-life is that of the first reactant with the others held at %s; of several molecules of one kind, from that concentration to half of it", s.others())}
 }
 
 func (s *mechanismSource) others() string {

@@ -5,6 +5,8 @@ import (
 	"errors"
 	"fmt"
 	"math"
+	"slices"
+	"strings"
 
 	"saddlebook/content/fault"
 	"saddlebook/content/schema"
@@ -111,7 +113,7 @@ func (s *profileSource) walk(m *kinetics.Mechanism) (profileValue, error) {
 	for i, p := range s.Path {
 		levels, err := n.Levels(p.Through, zero)
 		if err != nil {
-			ps = append(ps, pathProblem(i, err))
+			ps = append(ps, s.pathProblem(i, err, n))
 			continue
 		}
 		var row []levelValue
@@ -154,14 +156,27 @@ func sumProblem(path []string, err error, names []string) *fault.Problem {
 }
 
 // pathProblem places a refusal of the core at the element of the path.
-func pathProblem(path int, err error) *fault.Problem {
+func (s *profileSource) pathProblem(path int, err error, n *kinetics.Network) *fault.Problem {
 	at := []string{"path", fmt.Sprint(path + 1), "through"}
 	var pe *kinetics.PathError
 	if errors.As(err, &pe) {
-		if pe.Element < 0 {
+		if pe.Element < 0 && s.Zero != "" {
 			return problem([]string{"zero"}, pe.Msg, pe.Fix)
 		}
-		return problem(append(at, fmt.Sprint(pe.Element+1)), pe.Msg, pe.Fix)
+		element := max(pe.Element, 0)
+		at = append(at, fmt.Sprint(element+1))
+		var steps []string
+		for _, r := range n.Reactions {
+			steps = append(steps, r.Name)
+		}
+		text := strings.TrimSpace(s.Path[path].Through[element])
+		if _, err := kinetics.ParseSum(text, n.Names); err != nil && element%2 == 0 && !slices.Contains(steps, text) {
+			return sumProblem(at, err, n.Names)
+		}
+		if near := schema.Nearest(text, steps); near != "" && element%2 == 1 && !slices.Contains(steps, text) {
+			pe.Fix = fmt.Sprintf("did you mean %q?", near)
+		}
+		return problem(at, pe.Msg, pe.Fix)
 	}
 	return problem(at, err.Error(), "write states and steps in turn, such as [\"R + X\", \"TSa\", \"A\"]")
 }
@@ -234,7 +249,7 @@ func (s *profileSource) present(v profileValue, sheet *paper.Sheet) {
 	}
 	sheet.Figure(paper.Figure{Scene: scene, Caption: or(s.Caption, "Free-energy profile") + fmt.Sprintf(" (%s, 1 M).", at), Numbers: numbers})
 	sheet.Intervals(sure...)
-	sheet.Method("Levels are free energies at 1 M, completed by spectators so that levels of unequal composition compare. A transition state stands at its Marcus position between its neighbours.")
+	sheet.Method("Levels are free energies at 1 M, completed by spectators so that levels of unequal composition compare. A transition state stands nearer the side that its position χ (Marcus) says, in order of χ and not to scale.")
 	sheet.Assumption(fmt.Sprintf("The zero is %s.", v.Zero))
 	for _, a := range v.Assumes {
 		sheet.Assumption(a)

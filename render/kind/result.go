@@ -76,13 +76,15 @@ func (r Result) Print(in string) (string, error) {
 			return unit.RatioToOne(r.Value.Value), nil
 		case form == unit.FormRatio && in == "number":
 			form = unit.FormFactor
+		case form == unit.FormRatio:
+			return "", &unit.Error{Msg: fmt.Sprintf("%q is a ratio and has no unit", r.Key.Local()), Fix: "leave out \"in " + in + "\", or write \"in n:1\" or \"in number\""}
 		default:
 			asked, err := unit.Lookup(in, u.Dim)
 			if err != nil {
 				return "", err
 			}
 			u = asked
-			if form == unit.FormSpan || form == unit.FormRatio {
+			if form == unit.FormSpan {
 				form = unit.FormPlain // a fixed unit was asked for
 			}
 		}

@@ -60,7 +60,9 @@ type selectivitySource struct {
 }
 
 type selectivityValue struct {
-	At []limitsValue
+	From   string   // label of the species followed
+	Labels []string // of the products, for tables
+	At     []limitsValue
 }
 
 type limitsValue struct {
@@ -95,6 +97,10 @@ func (s *selectivitySource) limits(m *kinetics.Mechanism) (selectivityValue, err
 	}
 	if len(ps) > 0 {
 		return v, ps
+	}
+	v.From = or(m.Species[from].Label, s.From)
+	for _, g := range s.Products {
+		v.Labels = append(v.Labels, groupLabel(m, g))
 	}
 	var products []int
 	for _, g := range groups {
@@ -207,7 +213,7 @@ func (row limitsValue) exchange() string {
 	switch {
 	case row.NoExchange != "":
 		return "not defined: " + row.NoExchange
-	case row.Sources == 1:
+	case row.Sources < 2:
 		return "nothing to exchange"
 	case row.Fast:
 		return "holds"

@@ -9,32 +9,33 @@ import (
 
 // present shows both limits in one table, a row for each temperature.
 func (s *selectivitySource) present(v selectivityValue, sheet *paper.Sheet) {
-	pair := ""
+	pair, pairLabel := "", ""
 	if len(s.Products) == 2 {
 		pair = s.Products[0].Name + ":" + s.Products[1].Name
+		pairLabel = v.Labels[0] + " : " + v.Labels[1]
 	}
 	rests, exchanges := false, false
 	for _, row := range v.At {
 		rests = rests || len(row.Equilibrium) > 0
 		exchanges = exchanges || row.Sources > 1
 	}
-	t := paper.Table{Caption: or(s.Caption, fmt.Sprintf("Products from %s, at both limits", s.From)), Columns: []paper.Column{{Head: "T", Number: true}}}
+	t := paper.Table{Caption: or(s.Caption, fmt.Sprintf("Products from %s, at both limits", v.From)), Columns: []paper.Column{{Head: "T", Number: true}}}
 	column := func(head string) { t.Columns = append(t.Columns, paper.Column{Head: head, Number: true}) }
-	for _, group := range s.Products {
-		column(group.Name + " kinetic")
+	for _, label := range v.Labels {
+		column(label + ", kinetic")
 	}
 	if pair != "" {
-		column(pair + " kinetic")
+		column(pairLabel + ", kinetic")
 		if exchanges {
-			column(pair + " if exchange were infinitely fast")
+			column(pairLabel + ", if exchange were infinitely fast")
 		}
 	}
 	if rests {
-		for _, group := range s.Products {
-			column(group.Name + " at equilibrium")
+		for _, label := range v.Labels {
+			column(label + ", at equilibrium")
 		}
 		if pair != "" {
-			column(pair + " at equilibrium")
+			column(pairLabel + ", at equilibrium")
 		}
 	}
 	for _, row := range v.At {

@@ -7,6 +7,7 @@ import (
 	"fmt"
 	"io"
 	"strings"
+	"unicode/utf8"
 
 	"saddlebook/content/fault"
 	"saddlebook/kinetics/unit"
@@ -22,7 +23,7 @@ type tableSource struct {
 type tableRow struct {
 	name, reaction, label, source string
 	energy                        float64 // J/mol
-	line                          int
+	line, reactionCol             int     // where the row and its reaction stand
 }
 
 // read reads the file: a header row, then one row for each state.
@@ -30,31 +31,77 @@ func (t *tableSource) read(in Inputs, energies string) ([]tableRow, fault.Proble
 	path := []string{"table", "file"}
 	data, err := in.File(t.File)
 	if err != nil {
-		return nil, fault.Problems{&fault.Problem{Path: path, Severity: fault.Error, Msg: fmt.Sprintf("%q cannot be read: %v", t.File, err), Fix: "put the file beside the note", Err: err}}
+		fix := "make the file readable"
+		var remedy interface{ Remedy() string }
+		if errors.As(err, &remedy) {
+			fix = remedy.Remedy()
+		}
+		return nil, fault.Problems{&fault.Problem{Path: path, Severity: fault.Error, Msg: fmt.Sprintf("%q cannot be read: %v", t.File, err), Fix: fix, Err: err}}
 	}
 	u, err := unit.Lookup(or(t.Unit, or(energies, "kcal/mol")), unit.MolarEnergy)
 	if err != nil {
 		return nil, fault.Problems{problem([]string{"table", "unit"}, err.Error(), "write \"Eh\"")}
 	}
 	var problems fault.Problems
-	at := func(line, col int, msg, fix string) {
-		problems = append(problems, &fault.Problem{Path: path, File: t.File, Line: line, Col: col, Severity: fault.Error, Msg: msg, Fix: fix})
+	data = bytes.TrimPrefix(data, []byte("\ufeff"))
+	lines := bytes.Split(data, []byte("\n"))
+	column := func(line, byteCol int) int { // in characters, from 1
+		text := lines[line-1]
+		return 1 + utf8.RuneCount(text[:min(byteCol-1, len(text))])
 	}
-	r := csv.NewReader(bytes.NewReader(bytes.TrimPrefix(data, []byte("\ufeff"))))
-	r.TrimLeadingSpace = true
+	at := func(line, byteCol int, msg, fix string) {
+		problems = append(problems, &fault.Problem{Path: path, File: t.File, Line: line, Col: column(line, byteCol), Severity: fault.Error, Msg: msg, Fix: fix})
+	}
+	quote := func(err error) { // the only other fault of a row: how many cells it has is checked below
+		var bad *csv.ParseError
+		if errors.As(err, &bad) {
+			at(bad.Line, bad.Column, "a double quote is out of place", "close every double quote, and write \"\" for one inside a quoted cell")
+		}
+	}
+	for i, line := range lines {
+		if !utf8.Valid(line) {
+			bad := 0
+			for c, width := utf8.DecodeRune(line); c != utf8.RuneError || width != 1; c, width = utf8.DecodeRune(line[bad:]) {
+				bad += width
+			}
+			at(i+1, bad+1, fmt.Sprintf("the byte 0x%02X is not UTF-8", line[bad]), "save the file as UTF-8")
+			return nil, problems
+		}
+	}
+	r := csv.NewReader(bytes.NewReader(data))
+	r.TrimLeadingSpace, r.FieldsPerRecord = true, -1
 	r.Comment = '#'
 	head, err := r.Read()
-	if err != nil {
+	if errors.Is(err, io.EOF) {
 		at(1, 1, "the table has no header row", "begin it with a row such as name,reaction,E,Gcorr")
 		return nil, problems
 	}
-	column := map[string]int{}
-	for i, h := range head {
-		column[strings.TrimSpace(h)] = i
+	if quote(err); err != nil {
+		return nil, problems
 	}
-	for _, need := range append([]string{"name"}, t.Sum...) {
-		if _, ok := column[need]; !ok {
-			at(1, 1, fmt.Sprintf("the table has no column %q", need), suggest(need, head))
+	line, first := r.FieldPos(0)
+	if len(head) == 1 && strings.Contains(head[0], ";") {
+		at(line, first, "semicolons stand between the cells", "write commas there, and points in numbers")
+		return nil, problems
+	}
+	index := map[string]int{}
+	var columns []string
+	for i, h := range head {
+		h = strings.TrimSpace(h)
+		if _, twice := index[h]; twice {
+			_, col := r.FieldPos(i)
+			at(line, col, fmt.Sprintf("the table has two columns %q", h), "rename one of them")
+			continue
+		}
+		index[h] = i
+		columns = append(columns, h)
+	}
+	if _, ok := index["name"]; !ok {
+		at(line, first, "the header row has no column \"name\"", "write name over the column of the states")
+	}
+	for i, need := range t.Sum {
+		if _, ok := index[need]; !ok {
+			problems = append(problems, problem([]string{"table", "sum", fmt.Sprint(i + 1)}, fmt.Sprintf("%q has no column %q", t.File, need), suggest(need, columns)))
 		}
 	}
 	if len(problems) > 0 {
@@ -67,34 +114,51 @@ func (t *tableSource) read(in Inputs, energies string) ([]tableRow, fault.Proble
 		if errors.Is(err, io.EOF) {
 			return rows, problems
 		}
-		var bad *csv.ParseError
-		if errors.As(err, &bad) {
-			at(bad.Line, bad.Column, bad.Err.Error(), "give every row as many cells as the header row and close every quote")
+		if quote(err); err != nil {
 			return nil, problems
 		}
+		line, _ := r.FieldPos(0)
+		if len(cells) != len(head) {
+			at(line, 1, fmt.Sprintf("the row has %d cells and the header row has %d", len(cells), len(head)), "give it as many, empty ones too")
+			continue
+		}
 		cell := func(name string) string {
-			if i, ok := column[name]; ok {
+			if i, ok := index[name]; ok {
 				return strings.TrimSpace(cells[i])
 			}
 			return ""
 		}
-		line, _ := r.FieldPos(0)
 		row := tableRow{name: cell("name"), reaction: cell("reaction"), label: cell("label"), source: cell("source"), line: line}
-		if first := seen[row.name]; first > 0 {
-			at(line, 1, fmt.Sprintf("state %q stands in row %d too", row.name, first), "keep one of the rows")
+		if i, ok := index["reaction"]; ok {
+			_, col := r.FieldPos(i)
+			row.reactionCol = column(line, col)
 		}
-		seen[row.name] = line
-		if row.name == "" {
+		switch first := seen[row.name]; {
+		case row.name == "":
 			at(line, 1, "the row has no name", "write the name of a species or step in column name")
+		case first > 0:
+			at(line, 1, fmt.Sprintf("state %q stands in line %d too", row.name, first), "keep one of the rows")
+		default:
+			seen[row.name] = line
 		}
 		for _, c := range t.Sum {
 			q, err := unit.Parse(cell(c), u, unit.MolarEnergy)
-			if err != nil || q.SD != 0 {
-				l, col := r.FieldPos(column[c])
-				at(l, col, fmt.Sprintf("%q in column %q is not a plain number", cell(c), c), "write a number such as -12.4")
-				continue
+			l, col := r.FieldPos(index[c])
+			var bad *unit.Error
+			switch {
+			case cell(c) == "":
+				at(l, col, fmt.Sprintf("the cell in column %q is empty", c), "write a number, 0 where there is nothing to add")
+			case errors.As(err, &bad):
+				why := ": " + bad.Msg
+				if tail, ok := strings.CutPrefix(bad.Msg, fmt.Sprintf("%q", cell(c))); ok {
+					why = tail
+				}
+				at(l, col, fmt.Sprintf("%q in column %q%s", cell(c), c, why), bad.Fix)
+			case q.SD != 0:
+				at(l, col, fmt.Sprintf("%q in column %q has a ±", cell(c), c), "write the number alone, and the ± as error in the block")
+			default:
+				row.energy += q.SI
 			}
-			row.energy += q.SI
 		}
 		rows = append(rows, row)
 	}
@@ -113,7 +177,7 @@ func merge(species []speciesSource, steps []stepSource, rows []tableRow) ([]spec
 		switch {
 		case have[r.name]:
 		case r.reaction != "":
-			steps = append(steps[:len(steps):len(steps)], stepSource{Name: r.name, Reaction: r.reaction})
+			steps = append(steps[:len(steps):len(steps)], stepSource{Name: r.name}) // step takes the reaction from the row
 		default:
 			species = append(species[:len(species):len(species)], speciesSource{Name: r.name})
 		}

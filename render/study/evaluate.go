@@ -155,6 +155,9 @@ func (s *Study) compute(ctx context.Context, b *Block) (fault.List, error) {
 			}
 		}
 	}
+	for _, p := range keep.Problems {
+		b.Doubts = append(b.Doubts, p.Msg)
+	}
 	b.Done = true
 	return b.diagnoseAll(keep.Problems), nil
 }

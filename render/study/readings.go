@@ -2,7 +2,8 @@ package study
 
 import (
 	"fmt"
-	"sort"
+	"slices"
+	"strings"
 
 	"saddlebook/content"
 	"saddlebook/content/fault"
@@ -23,30 +24,69 @@ func (b *Block) Result(k kind.Key) (kind.Result, error) {
 	if i, ok := b.index[k.Canonical()]; ok {
 		return b.Results[i], nil
 	}
-	var known []string
-	for _, r := range b.Results {
-		known = append(known, r.Key.Local())
-	}
-	fix := fmt.Sprintf("see what it makes with: saddlebook results, or: saddlebook reference %s", b.Kind.Name)
-	if near := schema.Nearest(k.Local(), known); near != "" {
-		fix = fmt.Sprintf("did you mean %q?", near)
-	} else if near := schema.Nearest(k.Quantity, quantities(b.Results)); near != "" && near != k.Quantity {
-		fix = fmt.Sprintf("did you mean the quantity %q?", near)
-	}
-	return kind.Result{}, &NoResult{k, fix}
+	return kind.Result{}, &NoResult{k, b.suggestResult(k)}
 }
 
-func quantities(rs []kind.Result) []string {
-	seen := map[string]bool{}
-	var out []string
-	for _, r := range rs {
-		if !seen[r.Key.Quantity] {
-			seen[r.Key.Quantity] = true
-			out = append(out, r.Key.Quantity)
+// suggestResult names the results nearest to a key that there is not: that
+// differ by a slip of the hand, else in the condition, the item or the quantity.
+func (b *Block) suggestResult(k kind.Key) string {
+	var all, conditions, items, quantities []string
+	for _, r := range b.Results {
+		known := r.Key
+		quantities = append(quantities, known.Quantity)
+		if known.Quantity == k.Quantity && known.Item == k.Item {
+			conditions = append(conditions, known.Local())
+		}
+		if k.Condition == "" {
+			known.Condition = ""
+		}
+		all = append(all, known.Local())
+		if known.Quantity == k.Quantity {
+			items = append(items, known.Local())
 		}
 	}
-	sort.Strings(out)
+	if len(all) == 0 {
+		return fmt.Sprintf("leave the reading out: a %s block has no results", b.Kind.Name)
+	}
+	items = distinct(items)
+	few := 0 < len(items) && len(items) <= shown // show them all: a name of two letters is near to many
+	near := schema.Nearest(k.Local(), all)
+	if near != "" && len(conditions) == 0 && (!few || strings.EqualFold(near, k.Local())) {
+		return fmt.Sprintf("did you mean %q?", near)
+	}
+	if near := schema.Nearest(k.Quantity, quantities); near != "" && near != k.Quantity {
+		return fmt.Sprintf("did you mean the quantity %q?", near)
+	}
+	for _, known := range [][]string{conditions, items, quantities} {
+		if known = distinct(known); len(known) == 1 {
+			return "write " + known[0]
+		} else if len(known) > 0 {
+			return "write one of " + several(known)
+		}
+	}
+	return "" // a block with results has quantities
+}
+
+// distinct drops doubles and keeps the order.
+func distinct(words []string) []string {
+	var out []string
+	for _, w := range words {
+		if !slices.Contains(out, w) {
+			out = append(out, w)
+		}
+	}
 	return out
+}
+
+// shown is how many words a remedy lists: what it takes to see the pattern.
+const shown = 6
+
+// several lists words for a remedy.
+func several(words []string) string {
+	if len(words) > shown {
+		return fmt.Sprintf("%s and %d more", strings.Join(words[:shown], ", "), len(words)-shown)
+	}
+	return strings.Join(words, ", ")
 }
 
 // An Answer is what a reading prints, and where its number comes from.

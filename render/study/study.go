@@ -39,8 +39,9 @@ type Block struct {
 	Spec    any
 	Value   any
 	Results []kind.Result
-	Hash    string // of the results: what depends on this block depends on this
-	Done    bool   // it was computed, without an error
+	Hash    string   // of the results: what depends on this block depends on this
+	Done    bool     // it was computed, without an error
+	Doubts  []string // warnings, for the page
 
 	refs    []ref
 	index   map[string]int // canonical key in the block to result
@@ -76,8 +77,8 @@ func Run(ctx context.Context, book *content.Notebook, o Options) (*Study, fault.
 				faults = append(faults, fs...)
 				s.Blocks = append(s.Blocks, e)
 				s.of[b] = e
-				if e.ID != "" {
-					s.byID[n.Name+"#"+e.ID] = e
+				if full := n.Name + "#" + e.ID; e.ID != "" && s.byID[full] == nil {
+					s.byID[full] = e // a second block of the same id has its own fault
 				}
 			} else {
 				faults = append(faults, fs...)
@@ -105,7 +106,7 @@ func (s *Study) decode(b *content.Block) (*Block, fault.List) {
 		if near := schema.Nearest(b.Kind, kind.Names()); near != "" {
 			fix = fmt.Sprintf("did you mean %q?", near)
 		}
-		return nil, fault.List{{At: b.At, Severity: fault.Error, Msg: fmt.Sprintf("%q is not a kind of block", b.Kind), Fix: fix}}
+		return nil, fault.List{{At: b.KindAt, Severity: fault.Error, Msg: fmt.Sprintf("%q is not a kind of block", b.Kind), Fix: fix}}
 	}
 	spec, faults := k.Decode(b.Tree)
 	if b.Tree.Broken { // content has said why; the id still names the block
@@ -116,6 +117,10 @@ func (s *Study) decode(b *content.Block) (*Block, fault.List) {
 		for i := range faults {
 			faults[i].Block = b.Label
 		}
+		e.Spec = nil
+		return e, faults
+	}
+	if b.Tree.Refused() { // content has said why
 		e.Spec = nil
 		return e, faults
 	}
@@ -215,6 +220,16 @@ func (s *Study) suggestBlock(here, note, id string) string {
 	if near := schema.Nearest(note+"#"+id, all); near != "" {
 		return fmt.Sprintf("did you mean %q?", near)
 	}
+	if s.Book.Note(note) == nil {
+		var notes []string
+		for _, n := range s.Book.Notes {
+			notes = append(notes, n.Name)
+		}
+		if near := schema.Nearest(note, notes); near != "" {
+			return fmt.Sprintf("did you mean the note %q?", near)
+		}
+		return "write one of " + several(notes) + " before the #"
+	}
 	for _, full := range all { // the same id in another note
 		if strings.HasSuffix(full, "#"+id) {
 			return fmt.Sprintf("did you mean %q?", full)
@@ -281,13 +296,40 @@ func (s *Study) Of(b *content.Block) *Block { return s.of[b] }
 // Find returns the block of that note and id, or nil.
 func (s *Study) Find(note, id string) *Block { return s.byID[note+"#"+id] }
 
+// noFile says that a file is not there.
+type noFile struct{ msg, fix string }
+
+func (e *noFile) Error() string  { return e.msg }
+func (e *noFile) Remedy() string { return e.fix }
+
+func (s *Study) noFile(p, name string) error {
+	e := &noFile{"there is no such file", "put the file beside the note"}
+	entries, err := fs.ReadDir(s.Book.FS, path.Dir(p))
+	if err != nil {
+		return e // there is no such folder either
+	}
+	var known []string
+	for _, f := range entries {
+		if !f.IsDir() {
+			known = append(known, f.Name())
+		}
+	}
+	if near := schema.Nearest(path.Base(p), known); near != "" {
+		e.fix = fmt.Sprintf("did you mean %q?", path.Join(path.Dir(name), near))
+	}
+	return e
+}
+
 // file reads a file beside a note.
 func (s *Study) file(n *content.Note, name string) ([]byte, error) {
 	p := path.Join(path.Dir(n.Path), name)
 	if !fs.ValidPath(p) {
-		return nil, errors.New("it lies outside the notebook")
+		return nil, &noFile{"it lies outside the notebook", "put the file beside the note"}
 	}
 	data, err := fs.ReadFile(s.Book.FS, p)
+	if errors.Is(err, fs.ErrNotExist) {
+		return nil, s.noFile(p, name)
+	}
 	var pe *fs.PathError
 	if errors.As(err, &pe) {
 		err = pe.Err

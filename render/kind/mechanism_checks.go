@@ -1,0 +1,68 @@
+package kind
+
+import (
+	"fmt"
+	"math"
+
+	"saddlebook/content/fault"
+	"saddlebook/kinetics"
+	"saddlebook/kinetics/rate"
+	"saddlebook/kinetics/unit"
+)
+
+// diffusion holds every step of two molecules against the rate at which they
+// meet (Smoluchowski, 8RT/3η).
+func (b *builder) diffusion(n *kinetics.Network, T unit.Quantity) {
+	eta := 1e-3
+	if v := b.src.Viscosity; v != nil {
+		if eta = v.SI; !(eta > 0) {
+			b.fault([]string{"viscosity"}, fmt.Sprintf("viscosity %s makes no sense", v), "give one above 0, such as \"0.6 mPa s\"")
+			return
+		}
+	}
+	most := rate.Diffusion(T.SI, eta)
+	say := func(step, way string, k float64) {
+		b.problems = append(b.problems, &fault.Problem{Path: []string{b.section(step), step}, Severity: fault.Warning,
+			Msg: fmt.Sprintf("the rate constant of step %s %sat %s, %s, is above the diffusion limit of %s (viscosity %s mPa s)", step, way, T,
+				unit.Print(k, rateUnit(2), unit.FormRate), unit.Print(most, rateUnit(2), unit.FormRate), unit.Digits(eta*1000, 2)),
+			Fix: "raise the transition state to what diffusion allows, or state the viscosity of the solvent"})
+	}
+	for _, r := range n.Reactions {
+		if kinetics.Molecules(r.From) == 2 && r.Forward > most {
+			say(r.Name, "", r.Forward)
+		}
+		if r.Returns && kinetics.Molecules(r.To) == 2 && r.Back > most {
+			say(r.Name, "back ", r.Back)
+		}
+	}
+}
+
+// mirror checks that the enantiomers exist and have one energy.
+func (b *builder) mirror(m *kinetics.Mechanism) {
+	names := b.src.Enantiomers
+	if len(names) == 0 {
+		return
+	}
+	if len(names) != 2 {
+		b.fault([]string{"enantiomers"}, fmt.Sprintf("%d enantiomers are named", len(names)), "name the two of one pair, such as [\"R\", \"S\"]")
+		return
+	}
+	var pair []kinetics.Species
+	for i, name := range names {
+		k := m.Index(name)
+		if k < 0 {
+			b.problems = append(b.problems, unknownSpecies(m, name, []string{"enantiomers", fmt.Sprint(i + 1)}))
+			continue
+		}
+		pair = append(pair, m.Species[k])
+	}
+	if len(pair) < 2 {
+		return
+	}
+	for _, T := range append(b.src.temperatures(), b.src.Temperature) {
+		if x, y := pair[0].Energy.At(T.SI), pair[1].Energy.At(T.SI); math.Abs(x-y) > 1e-6 {
+			b.fault([]string{"enantiomers"}, fmt.Sprintf("%q and %q have different energies, and enantiomers have the same", names[0], names[1]), fmt.Sprintf("write %s = { same-as = %q }", names[1], names[0]))
+			return
+		}
+	}
+}
