@@ -50,3 +50,50 @@ func ExampleDomainError() {
 	fmt.Println(err)
 	// Output: temperature (K) of -78 is not possible; give a finite one above zero
 }
+
+// Tunnelling through an invented barrier with an imaginary frequency of 1500 cm-1:
+// the factor that multiplies the constants of both directions.
+func ExampleTunnelling_Factor() {
+	t := rate.Tunnelling{By: rate.ByEckart, Imaginary: 150000, Forward: 12 * kcal, Back: 18 * kcal}
+	for _, T := range []float64{250, 300, 400} {
+		kappa, err := t.Factor(T)
+		if err != nil {
+			fmt.Println(err)
+			return
+		}
+		fmt.Printf("%.0f K: %.1f\n", T, kappa)
+	}
+	// Output:
+	// 250 K: 113.3
+	// 300 K: 18.1
+	// 400 K: 4.2
+}
+
+// Bell's parabola has no answer for so much tunnelling.
+func ExampleBell() {
+	_, err := rate.Bell(150000, 298.15)
+	fmt.Println(err)
+	// Output: u = hν/(kB·T) in the correction of Bell of 7.2385 is not possible; it must stay below 2π: take the correction of Eckart, or a temperature above 343.5 K
+}
+
+// A constant of 1e9 in a liquid where partners meet at 7.4e9.
+func ExampleLimited() {
+	k, err := rate.Limited(1e9, rate.Diffusion(298.15, 0.89e-3))
+	if err != nil {
+		fmt.Println(err)
+		return
+	}
+	fmt.Printf("%.2g L/mol/s\n", k)
+	// Output: 8.8e+08 L/mol/s
+}
+
+// Breaking a C-H bond of 2900 cm-1 against a C-D bond of 2100 cm-1.
+func ExampleZeroPointEffect() {
+	ratio, err := rate.ZeroPointEffect(290000, 210000, 298.15)
+	if err != nil {
+		fmt.Println(err)
+		return
+	}
+	fmt.Printf("kH/kD %.1f\n", ratio)
+	// Output: kH/kD 6.9
+}

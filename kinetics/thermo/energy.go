@@ -1,15 +1,18 @@
 // Package thermo gives the free energy of one state, a species or a transition
 // state, as a function of temperature: a constant, an enthalpy with an entropy,
-// or a Boltzmann sum over conformers.
+// what a frequency calculation gives, or a Boltzmann sum over conformers.
 //
 // # Units
 //
-// Energies are J/mol, entropies and heat capacities J/mol/K, temperatures K.
+// Energies are J/mol, entropies and heat capacities J/mol/K, temperatures K,
+// frequencies and rotational constants 1/m, masses kg/mol, coordinates m.
 //
 // # Sources
 //
 //   - Boltzmann sum over conformers: McQuarrie, Statistical Mechanics (1976)
 //   - Constant heat capacity (Kirchhoff's law): common practice
+//   - Rigid rotor, harmonic oscillator, ideal gas: McQuarrie, as above
+//   - Free rotors among low modes: Grimme, Chem. Eur. J. 18, 9955 (2012)
 package thermo
 
 import (
@@ -23,15 +26,16 @@ import (
 // say otherwise.
 const Reference = 298.15
 
-// Energy is the free energy of one state. Exactly one of G, Heat and Conformers
-// says it; the zero Energy is a constant 0. It encodes to JSON and is never
+// Energy is the free energy of one state. Exactly one of G, Heat, Molecule and
+// Conformers says it; the zero Energy is a constant 0. It encodes to JSON and is never
 // changed in place: Plus returns a new one.
 type Energy struct {
-	G          float64  `json:",omitempty"` // J/mol, held at every temperature
-	Heat       *Heat    `json:",omitempty"` // follows temperature
-	Conformers []Energy `json:",omitempty"` // summed: −R·T ln Σ exp(−Gᵢ/(R·T))
-	Forms      int      `json:",omitempty"` // indistinct forms of equal energy: −R·T ln n; 0 is 1
-	Offset     float64  `json:",omitempty"` // J/mol, added at every temperature
+	G          float64   `json:",omitempty"` // J/mol, held at every temperature
+	Heat       *Heat     `json:",omitempty"` // follows temperature
+	Molecule   *Molecule `json:",omitempty"` // follows temperature
+	Conformers []Energy  `json:",omitempty"` // summed: −R·T ln Σ exp(−Gᵢ/(R·T))
+	Forms      int       `json:",omitempty"` // indistinct forms of equal energy: −R·T ln n; 0 is 1
+	Offset     float64   `json:",omitempty"` // J/mol, added at every temperature
 }
 
 // Heat is an enthalpy and an entropy, with a constant heat capacity if one is
@@ -63,6 +67,8 @@ func (e Energy) At(T float64) float64 {
 		g = boltzmann(e.Conformers, T)
 	case e.Heat != nil:
 		g = e.Heat.at(T)
+	case e.Molecule != nil:
+		g = e.Molecule.free(T)
 	}
 	if e.Forms > 1 {
 		g -= rate.R * T * math.Log(float64(e.Forms))
@@ -108,7 +114,7 @@ func (e Energy) Plus(d float64) Energy {
 }
 
 // Follows reports whether the energy follows temperature: it is an enthalpy with
-// an entropy, or all of its conformers are.
+// an entropy or a molecule, or all of its conformers are.
 func (e Energy) Follows() bool {
 	follow, constant := e.count()
 	return follow > 0 && constant == 0
@@ -129,7 +135,7 @@ func (e Energy) count() (follow, constant int) {
 			f, k := c.count()
 			follow, constant = follow+f, constant+k
 		}
-	case e.Heat != nil:
+	case e.Heat != nil, e.Molecule != nil:
 		follow = 1
 	default:
 		constant = 1
@@ -138,16 +144,16 @@ func (e Energy) count() (follow, constant int) {
 }
 
 // Check returns rate.ErrDomain if a number is not finite, T0 or Forms is
-// negative, or the energy is said in more than one way.
+// negative, the energy is said in more than one way, or Molecule.Check refuses.
 func (e Energy) Check() error {
 	said := 0
-	for _, given := range []bool{e.G != 0, e.Heat != nil, len(e.Conformers) > 0} {
+	for _, given := range []bool{e.G != 0, e.Heat != nil, e.Molecule != nil, len(e.Conformers) > 0} {
 		if given {
 			said++
 		}
 	}
 	if said > 1 {
-		return fmt.Errorf("%w: an energy is said twice; give one of G, Heat and Conformers", rate.ErrDomain)
+		return fmt.Errorf("%w: an energy is said twice; give one of G, Heat, Molecule and Conformers", rate.ErrDomain)
 	}
 	if e.Forms < 0 {
 		return &rate.DomainError{What: "number of forms", Value: float64(e.Forms), Fix: "give one or more"}
@@ -167,6 +173,11 @@ func (e Energy) Check() error {
 	for _, n := range numbers {
 		if math.IsNaN(n.value) || math.IsInf(n.value, 0) {
 			return &rate.DomainError{What: n.what, Value: n.value, Fix: "give a finite one"}
+		}
+	}
+	if e.Molecule != nil {
+		if err := e.Molecule.Check(); err != nil {
+			return err
 		}
 	}
 	for i, c := range e.Conformers {

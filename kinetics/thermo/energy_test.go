@@ -194,7 +194,7 @@ func TestCheck(t *testing.T) {
 		says string
 	}{
 		{"said twice", Energy{G: 1, Heat: &Heat{}}, "said twice"},
-		{"said thrice", Energy{G: 1, Heat: &Heat{}, Conformers: []Energy{{}}}, "give one of G, Heat and Conformers"},
+		{"said thrice", Energy{G: 1, Heat: &Heat{}, Conformers: []Energy{{}}}, "give one of G, Heat, Molecule and Conformers"},
 		{"forms", Energy{Forms: -1}, "number of forms of -1"},
 		{"NaN", Constant(nan), "free energy (J/mol) of NaN"},
 		{"infinite offset", Constant(1).Plus(inf), "offset (J/mol) of +Inf"},
