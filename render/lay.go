@@ -14,7 +14,7 @@ import (
 
 // lay makes the sheet of a block: what stands on the page in its place.
 func lay(b *study.Block) (*paper.Sheet, error) {
-	sheet := paper.New(paper.Block{ID: b.Source.Anchor(), Kind: b.Kind.Name, Text: b.Source.Text, File: b.Source.Note.Path, Line: b.Source.At.Line}, func(key string) (paper.Value, bool) {
+	sheet := paper.New(onPage(b), func(key string) (paper.Value, bool) {
 		k, err := kind.ParseKey(b.ID + "/" + key)
 		if err != nil {
 			return paper.Value{}, false
@@ -30,6 +30,20 @@ func lay(b *study.Block) (*paper.Sheet, error) {
 		sheet.Caution("Doubtful: " + d + ".")
 	}
 	return sheet, sheet.Err()
+}
+
+// onPage is how a block is known on its page.
+func onPage(b *study.Block) paper.Block {
+	p := paper.Block{ID: b.Source.Anchor(), Kind: b.Kind.Name, Text: b.Source.Text, File: b.Source.Note.Path, Line: b.Source.At.Line}
+	for _, other := range b.Source.Note.Blocks {
+		if other.Kind == b.Source.Kind {
+			p.Nth++
+		}
+		if other == b.Source {
+			break
+		}
+	}
+	return p
 }
 
 // shown is a result as readings and tables print it.

@@ -89,7 +89,7 @@ func (p *press) findings(n *content.Note, href string) []themes.Finding {
 		}
 		for _, f := range e.Findings() {
 			out = append(out, themes.Finding{Says: f.Says, Standing: string(f.Standing), Value: f.Value, Bound: f.Bound,
-				Probability: f.Probability, Asked: f.Asked, Href: href + "#" + f.Anchor})
+				Probability: f.Probability, Asked: f.Asked, Href: href + "#" + onPage(e).Within(f.Anchor)})
 		}
 	}
 	return out

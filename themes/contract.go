@@ -1,13 +1,20 @@
 package themes
 
-import "html/template"
+import (
+	"html/template"
+	"strings"
+)
 
 // Site is what every page knows of its notebook.
 type Site struct {
-	Title, Summary, Language string
-	Root                     string // leads from the page to the top of the site: "" or "../"
-	Program                  string // name and version of the program
+	Title, Summary string
+	Language       string // a language tag, such as "en"
+	Root           string // leads from the page to the top of the site: "" or "../"
+	Program        string // name and version of the program
 }
+
+// English tells whether the notebook is written in the language of the frame.
+func (s Site) English() bool { return s.Language == "en" || strings.HasPrefix(s.Language, "en-") }
 
 // A Link leads to another page or file; Href is relative.
 type Link struct{ Href, Text string }
@@ -28,6 +35,9 @@ type Finding struct {
 // Tally counts claims by standing.
 type Tally struct{ Holds, Fails, Undecided int }
 
+// None tells whether there are no claims.
+func (t Tally) None() bool { return t == Tally{} }
+
 // Page is one note.
 type Page struct {
 	Site                         Site
@@ -39,6 +49,9 @@ type Page struct {
 	Downloads, MentionedIn       []Link
 	InputHash                    string
 }
+
+// Untitled tells whether the note brings no level-1 heading of its own.
+func (p Page) Untitled() bool { return untitled(p.Heading + p.Body) }
 
 // Entry is a note in the list of notes.
 type Entry struct {
@@ -61,6 +74,11 @@ type Contents struct {
 	Claims  Tally
 }
 
+// Untitled tells whether the notebook's own words bring no level-1 heading.
+func (c Contents) Untitled() bool { return untitled(c.Front) }
+
+func untitled(text template.HTML) bool { return !strings.Contains(string(text), "<h1") }
+
 // NoteClaims is the claims of one note.
 type NoteClaims struct {
 	Href, Title string
@@ -80,6 +98,7 @@ type Input struct{ Note, Hash string }
 // Colophon says how the site was made.
 type Colophon struct {
 	Site     Site
-	Revision string // of the notebook; "" if it is not known
+	Revision string   // of the notebook; "" if it is not known
+	Methods  []string // the published methods behind the numbers, with their sources
 	Inputs   []Input
 }

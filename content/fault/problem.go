@@ -11,6 +11,7 @@ import (
 type Problem struct {
 	Path     []string // into the block, such as {"step", "TSa", "reaction"}; empty: the block itself
 	Char     int      // the character of the value (from 0) where the fault begins
+	Lacks    string   // a key beside it that is missing: no problem if that key has a fault of its own
 	Severity Severity
 	Msg      string // what is wrong, the value quoted
 	Fix      string // what to write instead; never empty

@@ -91,11 +91,11 @@ func readAmounts(c conformerSource, home float64, path []string) (given, *fault.
 		}
 		return given{thermo.Energy{Heat: &thermo.Heat{H: c.H.SI, S: c.S.SI, Cp: cp, T0: home}}, deviation(c.H.SD), deviation(c.S.SD)}, nil
 	case c.H != nil:
-		return given{}, problem(append(path, "H"), "H has no S beside it", "add S, such as S = \"-24.6 cal/mol/K\", or give G")
+		return given{}, lacking("S", problem(append(path, "H"), "H has no S beside it", "add S, such as S = \"-24.6 cal/mol/K\", or give G"))
 	case c.S != nil:
-		return given{}, problem(append(path, "S"), "S has no H beside it", "add H, or give G")
+		return given{}, lacking("H", problem(append(path, "S"), "S has no H beside it", "add H, or give G"))
 	case c.Cp != nil:
-		return given{}, problem(append(path, "Cp"), "Cp has no H and S beside it", "add both, or give G")
+		return given{}, lacking("H", problem(append(path, "Cp"), "Cp has no H and S beside it", "add both, or give G"))
 	}
 	return given{}, problem(path, "no energy is given", "give G, or H with S, or conformers, or same-as")
 }
@@ -141,6 +141,11 @@ func (e energySource) read(home float64, path []string) (given, *fault.Problem) 
 		return given{}, problem(append(path, "conformers"), "some conformers follow temperature and some do not", "give all of them as G, or all as H with S")
 	}
 	return given{energy: sum, sd: deviation(sd)}, nil
+}
+
+func lacking(key string, p *fault.Problem) *fault.Problem {
+	p.Lacks = key
+	return p
 }
 
 func problem(path []string, msg, fix string) *fault.Problem {

@@ -21,7 +21,7 @@ type Kind[S, R any] struct {
 	Refs      func(*S) []Ref                                     // the blocks it depends on
 	Files     func(*S) []string                                  // the files beside the note that it reads
 	Check     func(*S) fault.Problems                            // what the field list cannot say
-	Compute   func(context.Context, *S, Inputs) (R, error)       // pure; knows no places; R encodes to JSON. Problems that are all warnings go with a good R
+	Compute   func(context.Context, *S, Inputs) (R, error)       // pure; knows no places; R encodes to JSON. Problems that are all warnings go with a good R. A block with faults is computed too, to find what else is wrong: zero values must do no harm
 	Results   func(*S, R) []Result                               // every computed value
 	Gives     []Gift                                             // the keys of Results, for the reference
 	Present   func(*S, R, *paper.Sheet)                          // words, tables, figures; no HTML

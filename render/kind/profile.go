@@ -111,6 +111,9 @@ func (s *profileSource) walk(m *kinetics.Mechanism) (profileValue, error) {
 		return v, fault.Problems{sumProblem(key, err, n.Names)}
 	}
 	for i, p := range s.Path {
+		if len(p.Through) == 0 {
+			continue // the field list has told it
+		}
 		levels, err := n.Levels(p.Through, zero)
 		if err != nil {
 			ps = append(ps, s.pathProblem(i, err, n))

@@ -9,10 +9,9 @@ import (
 
 // present shows both limits in one table, a row for each temperature.
 func (s *selectivitySource) present(v selectivityValue, sheet *paper.Sheet) {
-	pair, pairLabel := "", ""
+	pair := ""
 	if len(s.Products) == 2 {
 		pair = s.Products[0].Name + ":" + s.Products[1].Name
-		pairLabel = v.Labels[0] + " : " + v.Labels[1]
 	}
 	rests, exchanges := false, false
 	for _, row := range v.At {
@@ -25,9 +24,9 @@ func (s *selectivitySource) present(v selectivityValue, sheet *paper.Sheet) {
 		column(label + ", kinetic")
 	}
 	if pair != "" {
-		column(pairLabel + ", kinetic")
+		column("ratio, kinetic")
 		if exchanges {
-			column(pairLabel + ", if exchange were infinitely fast")
+			column("ratio if exchange were infinitely fast")
 		}
 	}
 	if rests {
@@ -35,7 +34,7 @@ func (s *selectivitySource) present(v selectivityValue, sheet *paper.Sheet) {
 			column(label + ", at equilibrium")
 		}
 		if pair != "" {
-			column(pairLabel + ", at equilibrium")
+			column("ratio, at equilibrium")
 		}
 	}
 	for _, row := range v.At {
@@ -59,6 +58,9 @@ func (s *selectivitySource) present(v selectivityValue, sheet *paper.Sheet) {
 			}
 		}
 		t.Rows = append(t.Rows, cells)
+	}
+	if pair != "" {
+		t.Notes = append(t.Notes, fmt.Sprintf("Ratio: %s to %s.", v.Labels[0], v.Labels[1]))
 	}
 	sheet.Table(t)
 	s.explain(v, sheet)

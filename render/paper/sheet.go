@@ -39,6 +39,7 @@ type Sheet struct {
 type Block struct {
 	ID   string // of the block; "" for a block without one
 	Kind string
+	Nth  int    // among the blocks of its kind on the page, from 1
 	Text string // its source, as the author wrote it
 	File string // where it stands, and from which line
 	Line int
@@ -52,24 +53,29 @@ func New(b Block, value func(key string) (Value, bool)) *Sheet {
 	return &Sheet{block: b, value: value}
 }
 
-// Table is a table with a caption.
+// Table is a table with a caption. Each row has a cell for every column; the
+// first one is its head.
 type Table struct {
 	Caption string
 	Columns []Column
 	Rows    [][]Cell
+	Notes   []string // small, below it
 }
 
-// Column is one column of a table.
+// Column is one column of a table. A head with a unit reads as a quantity over
+// its unit.
 type Column struct {
 	Head, Unit string
 	Number     bool // set flush right
 }
 
 // Cell is one cell. Key is the result it shows; Beside stands small beside the
-// text; Flags are short remarks.
+// text; Flags are short remarks; Strong marks the cell that matters most.
 type Cell struct {
 	Text, Key, Beside string
 	Flags             []string
+	Strong            bool
+	verbatim          bool // a key, in which nothing is set as a formula
 }
 
 // Figure is a scene with its caption and the same numbers as a table.
@@ -79,11 +85,12 @@ type Figure struct {
 	Numbers Table
 }
 
-// ClaimRow is one claim with its standing.
+// ClaimRow is one claim with its standing: "holds", "fails" or "undecided".
+// Margin, Probability, Asked and Why are "" if there is none.
 type ClaimRow struct {
 	Says, Reading, Value, Bound, Margin string
 	Probability, Asked, Standing, Why   string
-	Anchor                              string
+	Anchor                              string // of the claim within its block
 }
 
 type words string

@@ -95,7 +95,7 @@ type stored struct {
 // compute computes one block, or takes it from the cache. The value always
 // passes through its stored form, so that both ways give the same bytes.
 func (s *Study) compute(ctx context.Context, b *Block) (fault.List, error) {
-	if b.Spec == nil {
+	if b.Spec == nil || b.unlinked {
 		return nil, nil
 	}
 	for _, r := range b.refs {
@@ -104,6 +104,9 @@ func (s *Study) compute(ctx context.Context, b *Block) (fault.List, error) {
 		}
 	}
 	in := s.inputs(ctx, b)
+	if len(b.wrong) > 0 {
+		return s.rest(ctx, b, in)
+	}
 	key, err := s.cacheKey(b)
 	if err != nil {
 		return nil, err
@@ -160,6 +163,26 @@ func (s *Study) compute(ctx context.Context, b *Block) (fault.List, error) {
 	}
 	b.Done = true
 	return b.diagnoseAll(keep.Problems), nil
+}
+
+// rest looks for what else is wrong in a block that has faults already, so
+// that they are all told at once. What it computes is thrown away.
+func (s *Study) rest(ctx context.Context, b *Block, in kind.Inputs) (fault.List, error) {
+	_, err := b.Kind.Compute(ctx, b.Spec, in)
+	if ctx.Err() != nil {
+		return nil, ctx.Err()
+	}
+	var ps fault.Problems
+	if !errors.As(err, &ps) {
+		return nil, nil
+	}
+	var out fault.List
+	for _, p := range ps {
+		if !b.hides(p) {
+			out = append(out, b.diagnose(p))
+		}
+	}
+	return out, nil
 }
 
 func hasError(ps fault.Problems) bool {

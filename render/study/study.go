@@ -8,6 +8,7 @@ import (
 	"fmt"
 	"io/fs"
 	"path"
+	"slices"
 	"sort"
 	"strings"
 	"sync"
@@ -43,9 +44,11 @@ type Block struct {
 	Done    bool     // it was computed, without an error
 	Doubts  []string // warnings, for the page
 
-	refs    []ref
-	index   map[string]int // canonical key in the block to result
-	sampled *sampling
+	wrong    []string // keys at which a fault has been told; a block with any is not computed
+	unlinked bool     // it names a block that is not there
+	refs     []ref
+	index    map[string]int // canonical key in the block to result
+	sampled  *sampling
 }
 
 type ref struct {
@@ -116,22 +119,49 @@ func (s *Study) decode(b *content.Block) (*Block, fault.List) {
 	if faults.Failed() {
 		for i := range faults {
 			faults[i].Block = b.Label
+			e.wrong = append(e.wrong, faults[i].Key)
 		}
-		e.Spec = nil
-		return e, faults
 	}
 	if b.Tree.Refused() { // content has said why
 		e.Spec = nil
 		return e, faults
 	}
-	ps := k.Check(spec)
-	for _, p := range ps {
+	for _, p := range k.Check(spec) {
+		if e.hides(p) {
+			continue
+		}
 		faults = append(faults, e.diagnose(p))
 		if p.Severity == fault.Error {
-			e.Spec = nil
+			e.wrong = append(e.wrong, fault.Key(p.Path))
 		}
 	}
 	return e, faults
+}
+
+// hides tells whether a problem may be no more than what follows from a fault
+// that has been told: one of the block as a whole, or at the same key or one
+// above or below it. What else is wrong is told in the same run.
+func (b *Block) hides(p *fault.Problem) bool {
+	if len(b.wrong) == 0 {
+		return false
+	}
+	key := fault.Key(p.Path)
+	if key == "" || p.Severity != fault.Error {
+		return true
+	}
+	beside := ""
+	if p.Lacks != "" {
+		beside = fault.Key(append(slices.Clone(p.Path[:len(p.Path)-1]), p.Lacks))
+	}
+	for _, w := range b.wrong {
+		if w == beside {
+			return true
+		}
+		if w == "" || key == w || strings.HasPrefix(key, w+".") || strings.HasPrefix(w, key+".") {
+			return true
+		}
+	}
+	return false
 }
 
 // diagnose joins the place to a problem.
@@ -156,8 +186,10 @@ func (s *Study) link() fault.List {
 		for _, r := range b.Kind.Refs(b.Spec) {
 			to, p := s.resolve(b, r)
 			if p != nil {
-				faults = append(faults, b.diagnose(p))
-				b.Spec = nil
+				if !b.hides(p) {
+					faults = append(faults, b.diagnose(p))
+				}
+				b.unlinked = true
 				continue
 			}
 			b.refs = append(b.refs, ref{r, to})
