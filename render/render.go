@@ -39,6 +39,9 @@ func Locate(name string) (Source, error) {
 		start = "."
 	}
 	info, err := os.Stat(start)
+	if errors.Is(err, fs.ErrNotExist) {
+		return Source{}, fmt.Errorf("%s: there is no such file or folder; name one that exists", name)
+	}
 	if err != nil {
 		return Source{}, err
 	}

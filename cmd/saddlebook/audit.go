@@ -15,7 +15,7 @@ func auditCommand() *cobra.Command {
 		Use:     "audit [NOTEBOOK]",
 		Short:   "Check sources, links and claims; write nothing",
 		Example: "  saddlebook audit --format json",
-		Args:    cobra.MaximumNArgs(1),
+		Args:    takes(0, 1, "at most one notebook"),
 		RunE: func(cmd *cobra.Command, args []string) error {
 			if format != "text" && format != "json" {
 				return status{lineWrong, fmt.Sprintf("%q is not a format; write text or json", format)}

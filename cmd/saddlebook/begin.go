@@ -14,7 +14,7 @@ func beginCommand() *cobra.Command {
 		Use:     "begin DIR",
 		Short:   "A small notebook to start from",
 		Example: "  saddlebook begin group-notes",
-		Args:    cobra.ExactArgs(1),
+		Args:    takes(1, 1, "one new folder"),
 		RunE: func(cmd *cobra.Command, args []string) error {
 			written, err := render.Begin(args[0])
 			switch {

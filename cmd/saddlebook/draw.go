@@ -2,6 +2,7 @@ package main
 
 import (
 	"errors"
+	"fmt"
 
 	"github.com/spf13/cobra"
 
@@ -15,7 +16,7 @@ func drawCommand() *cobra.Command {
 		Use:     "draw NOTE ID",
 		Short:   "One figure as a stand-alone SVG for a paper",
 		Example: "  saddlebook draw addition.md hills --to hills.svg",
-		Args:    cobra.ExactArgs(2),
+		Args:    takes(2, 2, "a note and the id of a figure"),
 		RunE: func(cmd *cobra.Command, args []string) error {
 			if to == "" {
 				return status{lineWrong, "draw needs --to FILE.svg"}
@@ -23,6 +24,9 @@ func drawCommand() *cobra.Command {
 			src, err := source(cmd, args[:1])
 			if err != nil {
 				return err
+			}
+			if src.Only == "" {
+				return status{lineWrong, fmt.Sprintf("%s is no note; name the Markdown file of one, such as addition.md", args[0])}
 			}
 			faults, err := render.Draw(cmd.Context(), src, args[1], to, o)
 			if werr := report(cmd, faults); werr != nil {

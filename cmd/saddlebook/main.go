@@ -9,6 +9,7 @@ import (
 	"io"
 	"os"
 	"os/signal"
+	"strings"
 	"syscall"
 
 	"github.com/spf13/cobra"
@@ -53,8 +54,29 @@ func run(args []string, out, errs io.Writer) int {
 		fmt.Fprintln(errs, "saddlebook: interrupted; nothing was written")
 		return machineFails
 	}
-	fmt.Fprintln(errs, "saddlebook: "+err.Error())
+	fmt.Fprintf(errs, "saddlebook: %s; see: saddlebook --help\n", plainly(err))
 	return lineWrong
+}
+
+// plainly words what cobra says of a wrong command line without the terms of
+// the library.
+func plainly(err error) string {
+	text, _, _ := strings.Cut(err.Error(), "\n")
+	if before, _, ok := strings.Cut(text, ": strconv."); ok {
+		text = before
+	}
+	return strings.TrimSuffix(text, ` for "saddlebook"`)
+}
+
+// takes refuses more arguments than most, or fewer than least, saying what the
+// command takes.
+func takes(least, most int, what string) cobra.PositionalArgs {
+	return func(cmd *cobra.Command, args []string) error {
+		if len(args) >= least && len(args) <= most {
+			return nil
+		}
+		return status{lineWrong, fmt.Sprintf("%s takes %s, and %d were given; see: saddlebook %s --help", cmd.Name(), what, len(args), cmd.Name())}
+	}
 }
 
 func rootCommand(out, errs io.Writer) *cobra.Command {

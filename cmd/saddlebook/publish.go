@@ -18,7 +18,7 @@ func publishCommand() *cobra.Command {
 until the new one is whole. A claim that does not hold does not stop it, and
 gives status 1.`,
 		Example: "  saddlebook publish group-notes --to /srv/www/notes",
-		Args:    cobra.MaximumNArgs(1),
+		Args:    takes(0, 1, "at most one notebook"),
 		RunE: func(cmd *cobra.Command, args []string) error {
 			src, err := source(cmd, args)
 			if err != nil {
@@ -35,7 +35,12 @@ gives status 1.`,
 			case done.Broken:
 				return status{sourceWrong, "nothing was written"}
 			}
-			fmt.Fprintln(cmd.OutOrStdout(), done.Summary())
+			if done.Note != nil {
+				fmt.Fprintf(cmd.ErrOrStderr(), "saddlebook: the cache was not written (%v); set SADDLEBOOK_CACHE to another folder, or to off\n", done.Note)
+			}
+			if _, err := fmt.Fprintln(cmd.OutOrStdout(), done.Summary()); err != nil {
+				return status{machineFails, err.Error()}
+			}
 			if done.Tally.Open() {
 				return status{claimFails, ""}
 			}

@@ -14,7 +14,7 @@ func referenceCommand() *cobra.Command {
 		Use:     "reference [KIND]",
 		Short:   "What a block kind takes and gives",
 		Example: "  saddlebook reference mechanism",
-		Args:    cobra.MaximumNArgs(1),
+		Args:    takes(0, 1, "at most one kind"),
 		ValidArgsFunction: func(*cobra.Command, []string, string) ([]string, cobra.ShellCompDirective) {
 			return render.Kinds(), cobra.ShellCompDirectiveNoFileComp
 		},

@@ -18,7 +18,7 @@ func resultsCommand() *cobra.Command {
 significant digits; JSON is one array of objects with key, value, unit, low,
 high, file and line, at full precision.`,
 		Example: "  saddlebook results addition.md --format csv",
-		Args:    cobra.MaximumNArgs(1),
+		Args:    takes(0, 1, "at most one notebook or note"),
 		RunE: func(cmd *cobra.Command, args []string) error {
 			if format != "text" && format != "csv" && format != "json" {
 				return status{lineWrong, fmt.Sprintf("%q is not a format; write text, csv or json", format)}

@@ -94,8 +94,9 @@ func (s *scanner) number() (numeral, *Error) {
 			if points > 1 {
 				return n, s.fault(start, "has more than one decimal point", "write one point and no sign between groups of digits")
 			}
+			sign := n.digits
 			n.digits += string(s.text[start:s.at])
-			if e := s.grouped(start); e != nil {
+			if e := s.grouped(start, sign); e != nil {
 				return n, e
 			}
 			return n, s.power(&n, string(s.text[start:s.at]) == "10")
@@ -119,9 +120,9 @@ func (s *scanner) noNumber(at int) *Error {
 }
 
 // grouped refuses a decimal comma and digits in groups, after the digits that
-// begin at start.
-func (s *scanner) grouped(start int) *Error {
-	head := string(s.text[start:s.at])
+// begin at start, behind the sign.
+func (s *scanner) grouped(start int, sign string) *Error {
+	head := sign + string(s.text[start:s.at])
 	c, next := s.peek(0), s.peek(1)
 	tail := func(from int) string {
 		end := from
