@@ -70,11 +70,11 @@ func (s *mechanismSource) energyTable(v mechanismValue) paper.Table {
 		if sp.Forms > 1 {
 			remarks = append(remarks, fmt.Sprintf("stands for %d forms", sp.Forms))
 		}
-		row(sp.Name, sp.Label, text, append(remarks, ownError(sp.SD, sp.SDEntropy)...))
+		row(sp.Name, sp.Label, text, append(remarks, fromDefaults(text, sp.SD)...))
 	}
 	for _, st := range v.Model.Steps {
 		text, remarks := given(st.Name)
-		row(st.Name, st.Label, text, append(remarks, ownError(st.SD, st.SDEntropy)...))
+		row(st.Name, st.Label, text, append(remarks, fromDefaults(text, st.SD)...))
 	}
 	return t
 }
@@ -107,14 +107,11 @@ func (c conformerSource) words() string {
 	return strings.Join(parts, ", ")
 }
 
-// ownError tells the error that the sampling gives a state for itself alone.
-func ownError(sd, entropy *float64) []string {
-	var out []string
-	if sd != nil && *sd > 0 {
-		out = append(out, "own error ± "+unit.Print(*sd, unit.Must("kcal/mol"), unit.FormEnergy))
+// fromDefaults tells the error that a state has from the defaults of the
+// mechanism, since its energy as given shows none.
+func fromDefaults(given string, sd *float64) []string {
+	if sd == nil || *sd == 0 || strings.Contains(given, "±") {
+		return nil
 	}
-	if entropy != nil && *entropy > 0 {
-		out = append(out, "own error of S ± "+unit.Print(*entropy, unit.Must("cal/mol/K"), unit.FormEntropy))
-	}
-	return out
+	return []string{"own error ± " + unit.Print(*sd, unit.Must("kcal/mol"), unit.FormEnergy) + " from error"}
 }

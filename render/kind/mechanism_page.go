@@ -78,7 +78,7 @@ func presentMechanism(s *mechanismSource, v mechanismValue, sheet *paper.Sheet) 
 		}
 	}
 	presentRacemisation(s, v, sheet)
-	sheet.Table(s.energyTable(v))
+	sheet.Given(s.energyTable(v))
 	sheet.Intervals(sure...)
 	sheet.Method("Rate constants: Eyring equation with the exact constants of 2019; equilibrium constants from the free energies, so that each reversible step obeys detailed balance. Position: the Marcus relation χ = √f / (√f + √b) of the forward and back barriers f and b; early below 0.45, late above 0.55.")
 	sheet.Assumption("Transmission coefficients and path degeneracies are 1 unless the block says otherwise; they act in both directions.")

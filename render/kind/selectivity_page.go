@@ -92,7 +92,7 @@ func (s *selectivitySource) explain(v selectivityValue, sheet *paper.Sheet) {
 		T := unit.Print(row.T.SI, row.T.Unit, unit.FormPlain)
 		sheet.Method(fmt.Sprintf("Fast exchange (Curtin-Hammett) at %s: %s. It holds where the kinetic ratio and the one for infinitely fast exchange agree within 5 %%; with one state to form products from there is nothing to exchange.", T, row.exchange()))
 		if row.WhyNot != "" {
-			sheet.Words(fmt.Sprintf("No equilibrium ratio at %s: %s.", T, row.WhyNot))
+			sheet.Words(fmt.Sprintf("At %s %s.", T, row.WhyNot))
 		}
 		if row.Elsewhere > 0 {
 			sheet.Assumption(fmt.Sprintf("At %s a share of %s goes to species that are not listed; the shares here are among the listed products.", T, unit.Percent(row.Elsewhere)))

@@ -3,7 +3,7 @@ package paper
 import "fmt"
 
 // folds writes what stands folded below a block, in one row: the numbers of its
-// figures, how sure its results are, method and assumptions, and the source; at
+// figures, what it was given, how sure its results are, method and assumptions, and the source; at
 // its end the block's own name, which leads to it.
 func (s *Sheet) folds(w *writer) {
 	start := w.Len()
@@ -18,6 +18,9 @@ func (s *Sheet) folds(w *writer) {
 			head = fmt.Sprintf("Numbers of figure %d of this block", i+1)
 		}
 		w.fold("numbers", head, func() { f.Numbers.html(w) })
+	}
+	if s.given != nil {
+		w.fold("given", "Given", func() { s.given.html(w) })
 	}
 	if t := s.intervals(); len(t.Rows) > 0 {
 		w.fold("sure", "How sure", func() { t.html(w) })

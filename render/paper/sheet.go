@@ -31,6 +31,7 @@ type Sheet struct {
 	assumptions []string
 	cautions    []string
 	uncertain   []string
+	given       *Table
 	figures     []Figure
 	errs        []error
 }
@@ -155,6 +156,9 @@ func (s *Sheet) Ends(key string) (low, high *float64) {
 
 // Interval words the widest 5 to 95 % interval of a result, or "".
 func (s *Sheet) Interval(key string) string { return s.look(key).Widest }
+
+// Given keeps a table of what the block was given, folded below it.
+func (s *Sheet) Given(t Table) { s.given = &t }
 
 // Intervals lists results whose intervals the block shows, where there are any.
 func (s *Sheet) Intervals(keys ...string) { s.uncertain = append(s.uncertain, keys...) }
