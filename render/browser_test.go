@@ -98,7 +98,6 @@ func report(t *testing.T, found map[string][]string) {
 
 func publishDemo(t *testing.T) string {
 	t.Helper()
-	t.Setenv("SADDLEBOOK_CACHE", "off")
 	dir, err := filepath.EvalSymlinks(t.TempDir())
 	if err != nil {
 		t.Fatal(err)

@@ -20,7 +20,6 @@ var update = flag.Bool("update", false, "rewrite the golden files; read the chan
 // TestKinds holds what each kind computes and shows against golden files: a
 // note for each kind in testdata/kinds, its results and its page text beside it.
 func TestKinds(t *testing.T) {
-	t.Setenv("SADDLEBOOK_CACHE", "off")
 	notes, err := filepath.Glob("testdata/kinds/*.md")
 	if err != nil {
 		t.Fatal(err)

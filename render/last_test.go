@@ -14,7 +14,6 @@ import (
 // publish, their claims hold, and what they compute is held by a golden file
 // and, for the dimer, by the closed form.
 func TestLastNotes(t *testing.T) {
-	t.Setenv("SADDLEBOOK_CACHE", "off")
 	src := Source{FS: os.DirFS("testdata/last")}
 	out, err := Publish(context.Background(), src, filepath.Join(t.TempDir(), "out"), Options{})
 	if err != nil || out.Broken || out.Tally.Open() {

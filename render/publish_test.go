@@ -88,9 +88,8 @@ func changed(a, b map[string]string) []string {
 }
 
 func TestSameInputSameBytes(t *testing.T) {
-	t.Setenv("SADDLEBOOK_CACHE", t.TempDir())
 	var first map[string]string
-	for i, o := range []Options{{Jobs: 1, Fresh: true}, {Jobs: 1}, {Jobs: 7}, {Jobs: 3, Fresh: true}, {}} {
+	for i, o := range []Options{{Jobs: 3, Fresh: true}, {Jobs: 1}, {Jobs: 7}, {}} {
 		dir := filepath.Join(t.TempDir(), strings.Repeat("deep/", i), "book")
 		if err := os.CopyFS(dir, content.Demo()); err != nil {
 			t.Fatal(err)
@@ -182,7 +181,6 @@ func TestDamagedCache(t *testing.T) {
 // computed. Numbers of fewer than four digits stand everywhere, so the search
 // is for the six digits that results prints.
 func TestNoResultStandsInTheSource(t *testing.T) {
-	t.Setenv("SADDLEBOOK_CACHE", "off")
 	lines, faults, err := Results(context.Background(), Source{FS: content.Demo(), Embedded: true}, Options{})
 	if err != nil || faults.Failed() {
 		t.Fatal(err, faults)
@@ -231,7 +229,6 @@ func goSource(t *testing.T, root string) string {
 
 // A source that is wrong leaves the site that stands alone.
 func TestABrokenSourceWritesNothing(t *testing.T) {
-	t.Setenv("SADDLEBOOK_CACHE", "off")
 	dir, to := t.TempDir(), filepath.Join(t.TempDir(), "out")
 	write(t, dir, lab)
 	before := publish(t, dir, to, Options{})
@@ -263,5 +260,23 @@ func TestRelative(t *testing.T) {
 		if got := relative(tt.from, tt.to); got != tt.want {
 			t.Errorf("from %s to %s: %s, want %s", tt.from, tt.to, got, tt.want)
 		}
+	}
+}
+
+// What a note says of itself stands on its page, and in the list of notes.
+func TestWhatANoteSaysOfItself(t *testing.T) {
+	dir, to := t.TempDir(), filepath.Join(t.TempDir(), "out")
+	write(t, dir, lab)
+	write(t, dir, map[string]string{"apart.md": lab["apart.md"] + "\n```toml note\ndate = \"2033-04-05\"\nauthors = [\"bench nine\"]\ntags = [\"odd tag\"]\nstatus = \"superseded\"\nsummary = \"All of it in brief.\"\n```\n"})
+	site := publish(t, dir, to, Options{})
+	for _, page := range []string{"apart.html", "index.html"} {
+		for _, want := range []string{"2033-04-05", "odd tag", "superseded", "All of it in brief."} {
+			if !strings.Contains(site[page], want) {
+				t.Errorf("%s does not say %q", page, want)
+			}
+		}
+	}
+	if !strings.Contains(site["apart.html"], "bench nine") {
+		t.Error("the page does not name its authors")
 	}
 }
