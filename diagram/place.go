@@ -222,8 +222,8 @@ func (b *board) settle(l *label) bool {
 		l.far = true
 		near := len(l.choices)
 		l.choices = append(l.choices, b.choicesOf(l)...)
-		if p, i := b.cheapest(l, best, near); i >= 0 {
-			best, at = p, i
+		if _, i := b.cheapest(l, best, near); i >= 0 {
+			at = i
 		}
 	}
 	moved := at != l.at

@@ -38,13 +38,13 @@ func TestCheck(t *testing.T) {
 		{"low", func(*Mechanism) *Mechanism {
 			return build(t, T, []state{{"R", 0}, {"A", 3}}, []state{{"TS: R <=> A", 2}})
 		}, "TS", true, "below its products A"},
-		{"entropy in kJ", func(m *Mechanism) *Mechanism {
-			m = addition()
+		{"entropy in kJ", func(*Mechanism) *Mechanism {
+			m := addition()
 			m.Species[2].Energy = thermo.Following(-11.5*kcal, -0.138)
 			return m
 		}, "A", false, "the entropy of A is -0.138 J/mol/K"},
-		{"mixed", func(m *Mechanism) *Mechanism {
-			m = addition()
+		{"mixed", func(*Mechanism) *Mechanism {
+			m := addition()
 			m.Species[0].Energy = thermo.Constant(0)
 			return m
 		}, "TSa", false, "with a constant G (R), so it can be used at −78 °C only"},

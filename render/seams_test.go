@@ -7,8 +7,8 @@ import (
 	"go/parser"
 	"go/printer"
 	"go/token"
-	"io/fs"
 	"os"
+	"path/filepath"
 	"slices"
 	"strings"
 	"testing"
@@ -69,33 +69,38 @@ func TestSeams(t *testing.T) {
 func declarations(t *testing.T, pkg string, names []string) string {
 	t.Helper()
 	fset := token.NewFileSet()
-	pkgs, err := parser.ParseDir(fset, "../"+pkg, func(i fs.FileInfo) bool { return !strings.HasSuffix(i.Name(), "_test.go") }, parser.ParseComments)
+	files, err := filepath.Glob("../" + pkg + "/*.go")
 	if err != nil {
 		t.Fatal(err)
 	}
 	types, funcs, methods := map[string]string{}, map[string]string{}, map[string][]string{}
-	for _, p := range pkgs {
-		for _, f := range p.Files {
-			for _, d := range f.Decls {
-				switch d := d.(type) {
-				case *ast.GenDecl:
-					for _, spec := range d.Specs {
-						if ts, ok := spec.(*ast.TypeSpec); ok {
-							unexported(ts)
-							types[ts.Name.Name] = printed(t, fset, &ast.GenDecl{Tok: token.TYPE, Specs: []ast.Spec{ts}})
-						}
+	for _, name := range files {
+		if strings.HasSuffix(name, "_test.go") {
+			continue
+		}
+		f, err := parser.ParseFile(fset, name, nil, parser.ParseComments)
+		if err != nil {
+			t.Fatal(err)
+		}
+		for _, d := range f.Decls {
+			switch d := d.(type) {
+			case *ast.GenDecl:
+				for _, spec := range d.Specs {
+					if ts, ok := spec.(*ast.TypeSpec); ok {
+						unexported(ts)
+						types[ts.Name.Name] = printed(t, fset, &ast.GenDecl{Tok: token.TYPE, Specs: []ast.Spec{ts}})
 					}
-				case *ast.FuncDecl:
-					if !d.Name.IsExported() {
-						continue
-					}
-					text := printed(t, fset, &ast.FuncDecl{Recv: d.Recv, Name: d.Name, Type: d.Type})
-					if d.Recv == nil {
-						funcs[d.Name.Name] = text
-					} else {
-						on := receiver(d.Recv.List[0].Type)
-						methods[on] = append(methods[on], text)
-					}
+				}
+			case *ast.FuncDecl:
+				if !d.Name.IsExported() {
+					continue
+				}
+				text := printed(t, fset, &ast.FuncDecl{Recv: d.Recv, Name: d.Name, Type: d.Type})
+				if d.Recv == nil {
+					funcs[d.Name.Name] = text
+				} else {
+					on := receiver(d.Recv.List[0].Type)
+					methods[on] = append(methods[on], text)
 				}
 			}
 		}

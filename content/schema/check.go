@@ -169,7 +169,7 @@ func (c *checker) bare(f Field) error {
 	if key, named := strings.CutPrefix(f.Bare, "@"); named {
 		i := slices.IndexFunc(c.root, func(f Field) bool { return f.Key == key })
 		if i < 0 || c.root[i].Type != Text {
-			return fmt.Errorf("Bare names %q, which is no text of the block", key)
+			return fmt.Errorf("its bare unit names %q, which is no text of the block", key)
 		}
 		symbols = append([]string{c.root[i].Default}, c.root[i].OneOf...)
 		if c.root[i].Required {

@@ -2,10 +2,7 @@ package kind_test
 
 import (
 	"context"
-	"flag"
 	"math"
-	"os"
-	"path/filepath"
 	"strings"
 	"testing"
 	"testing/fstest"
@@ -16,9 +13,7 @@ import (
 	"saddlebook/render/study"
 )
 
-var update = flag.Bool("update", false, "rewrite the golden files")
-
-// evaluate runs a notebook of one note, addition.md, with files beside it.
+// evaluate runs a notebook of one note, with files beside it.
 func evaluate(t *testing.T, note string, files map[string]string) (*study.Study, fault.List) {
 	t.Helper()
 	fsys := fstest.MapFS{"saddlebook.toml": {Data: []byte("title = \"Test\"\n")}, "note.md": {Data: []byte(note)}}
@@ -79,28 +74,6 @@ func near(t *testing.T, what string, got, want, tol float64) {
 	t.Helper()
 	if e := math.Abs(got-want) / math.Max(math.Abs(want), 1e-300); !(e <= tol) {
 		t.Errorf("%s = %.12g, want %.12g (relative error %.1e, allowed %.0e)", what, got, want, e, tol)
-	}
-}
-
-// golden compares with a file of testdata, or rewrites it.
-func golden(t *testing.T, name, got string) {
-	t.Helper()
-	file := filepath.Join("testdata", name)
-	if *update {
-		if err := os.MkdirAll(filepath.Dir(file), 0o777); err != nil {
-			t.Fatal(err)
-		}
-		if err := os.WriteFile(file, []byte(got), 0o666); err != nil {
-			t.Fatal(err)
-		}
-		return
-	}
-	want, err := os.ReadFile(file)
-	if err != nil {
-		t.Fatal(err)
-	}
-	if got != string(want) {
-		t.Errorf("%s differs; rewrite it with -update and read the change\n--- got\n%s", file, got)
 	}
 }
 
