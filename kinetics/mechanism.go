@@ -183,13 +183,15 @@ func (m *Mechanism) HasErrors() bool {
 }
 
 // ExactStates returns the names of the states taken as exact: those without any
-// error, in order. A species at constant zero only sets the scale and is left out.
+// error, in order. Species at constant zero that only set the scale are left
+// out: as many as the conservation laws leave free to choose, and no more.
 func (m *Mechanism) ExactStates() []string {
 	p := m.stated()
 	entropies := m.uncertainEntropies()
+	free := m.freeZeros()
 	var names []string
 	for i, name := range m.States() {
-		if p.SD(i) == 0 && !slices.Contains(entropies, i) && !(i < len(m.Species) && m.setsZero(i)) {
+		if p.SD(i) == 0 && !slices.Contains(entropies, i) && !free[i] {
 			names = append(names, name)
 		}
 	}

@@ -32,7 +32,7 @@ func TestKinds(t *testing.T) {
 			if err != nil {
 				t.Fatal(err)
 			}
-			fsys := fstest.MapFS{"saddlebook.toml": {Data: []byte("title = \"Kinds\"\n")}, name + ".md": {Data: source}}
+			fsys := fstest.MapFS{"saddlebook.toml": {Data: []byte("title = \"Kinds\"\n")}, "kind-" + name + ".md": {Data: source}}
 			s, faults, err := open(context.Background(), Source{FS: fsys}, Options{Jobs: 1})
 			if err != nil {
 				t.Fatal(err)

@@ -29,6 +29,9 @@ func lay(b *study.Block) (*paper.Sheet, error) {
 	for _, d := range b.Doubts {
 		sheet.Caution("Doubtful: " + d + ".")
 	}
+	for _, r := range b.Remarks {
+		sheet.Assumption(r)
+	}
 	return sheet, sheet.Err()
 }
 
@@ -62,8 +65,7 @@ func shown(r kind.Result) paper.Value {
 	return v
 }
 
-// body joins the pieces of a note: prose, blocks and readings. root leads from
-// the page to the top of the site.
+// body joins the pieces of a note: prose, blocks and readings.
 func body(s *study.Study, n *content.Note) (string, error) {
 	var b strings.Builder
 	for _, p := range n.Pieces {

@@ -51,32 +51,32 @@ func dress(book *content.Notebook) (*themes.Theme, error) {
 		}
 		replace[file] = string(data)
 	}
-	return themes.Open(themes.Default, replace)
+	theme, err := themes.Open(themes.Default, replace)
+	if err != nil {
+		return nil, err
+	}
+	return theme, theme.Try()
 }
 
 // site is what a page at that path knows of the notebook.
 func (p *press) site(at string) themes.Site {
 	set := p.study.Book.Settings
-	return themes.Site{Title: set.Title, Summary: set.Summary, Language: set.Language, Root: strings.Repeat("../", strings.Count(at, "/")), Program: Program()}
+	return themes.Site{Title: set.Title, Summary: set.Summary, Authors: set.Authors, Language: set.Language, Root: strings.Repeat("../", strings.Count(at, "/")), Program: Program()}
 }
 
 // about is what the note's own block says of the page, or the plain truth.
-func (p *press) about(n *content.Note) kind.NoteValue {
-	about := kind.NoteValue{}
+func (p *press) about(n *content.Note) kind.About {
 	for _, b := range n.Blocks {
-		e := p.study.Of(b)
-		if e == nil || !e.Done {
-			continue
-		}
-		if v, ok := e.Value.(kind.NoteValue); ok {
-			about = v
-			break
+		if e := p.study.Of(b); e != nil && e.Done {
+			if about, ok := e.Kind.About(e.Spec, e.Value); ok {
+				if about.Title == "" {
+					about.Title = n.Title
+				}
+				return about
+			}
 		}
 	}
-	if about.Title == "" {
-		about.Title = n.Title
-	}
-	return about
+	return kind.About{Title: n.Title}
 }
 
 // findings are the claims of a note; href leads to its page.
@@ -100,7 +100,7 @@ const longNote = 4
 
 // note writes the page of a note and the files that go with it.
 func (p *press) note(n *content.Note, stage *site.Stage) error {
-	at := n.Name + ".html"
+	at := pageOf(n)
 	text, err := body(p.study, n)
 	if err != nil {
 		return err
@@ -228,9 +228,10 @@ func (p *press) inputHash(n *content.Note) string {
 
 // notebookPages writes the contents, the claims, the colophon and the style.
 func (p *press) notebookPages(stage *site.Stage) error {
-	contents := themes.Contents{Site: p.site("index.html")}
-	claims := themes.Claims{Site: p.site("claims.html")}
-	colophon := themes.Colophon{Site: p.site("colophon.html"), Revision: p.revision}
+	contents := themes.Contents{Site: p.site(contentsFile)}
+	claims := themes.Claims{Site: p.site(claimsFile)}
+	kinds := map[string]bool{} // those in use
+	colophon := themes.Colophon{Site: p.site(colophonFile), Revision: p.revision}
 	if front := p.study.Book.Front; front != nil {
 		text, err := body(p.study, front)
 		if err != nil {
@@ -240,7 +241,7 @@ func (p *press) notebookPages(stage *site.Stage) error {
 	}
 	for _, n := range p.study.Book.Notes {
 		about := p.about(n)
-		href := relative("index.html", n.Name+".html")
+		href := relative(contentsFile, pageOf(n))
 		findings := p.findings(n, href)
 		var tally themes.Tally
 		for _, f := range findings {
@@ -262,17 +263,27 @@ func (p *press) notebookPages(stage *site.Stage) error {
 			claims.Notes = append(claims.Notes, themes.NoteClaims{Href: href, Title: about.Title, Findings: findings})
 		}
 		colophon.Inputs = append(colophon.Inputs, themes.Input{Note: n.Path, Hash: p.inputHash(n)})
+		for _, b := range n.Blocks {
+			if e := p.study.Of(b); e != nil && e.Done {
+				kinds[e.Kind.Name] = true
+			}
+		}
 	}
 	contents.Claims = claims.Tally
+	for _, name := range kind.Names() {
+		if kinds[name] && kind.Find(name).Method != "" {
+			colophon.Methods = append(colophon.Methods, kind.Find(name).Method)
+		}
+	}
 	for _, page := range []struct {
 		at    string
 		write func(*bytes.Buffer) error
 	}{
-		{"index.html", func(w *bytes.Buffer) error { return p.theme.Contents(w, contents) }},
-		{"claims.html", func(w *bytes.Buffer) error { return p.theme.Claims(w, claims) }},
-		{"colophon.html", func(w *bytes.Buffer) error { return p.theme.Colophon(w, colophon) }},
-		{"provenance.json", func(w *bytes.Buffer) error { return provenance(w, colophon) }},
-		{"assets/style.css", func(w *bytes.Buffer) error {
+		{contentsFile, func(w *bytes.Buffer) error { return p.theme.Contents(w, contents) }},
+		{claimsFile, func(w *bytes.Buffer) error { return p.theme.Claims(w, claims) }},
+		{colophonFile, func(w *bytes.Buffer) error { return p.theme.Colophon(w, colophon) }},
+		{provenanceFile, func(w *bytes.Buffer) error { return provenance(w, colophon) }},
+		{styleFile, func(w *bytes.Buffer) error {
 			_, err := w.WriteString(p.theme.Stylesheet(ink.Style()))
 			return err
 		}},

@@ -280,3 +280,57 @@ func TestWhatANoteSaysOfItself(t *testing.T) {
 		t.Error("the page does not name its authors")
 	}
 }
+
+// What a page shows of a block behind another may change without a change of
+// its numbers: the unit it is printed in, or which energies have an error. The
+// cache must not hide that.
+func TestCachedIsFresh(t *testing.T) {
+	note := "# N\n\n```toml mechanism\nid = \"m\"\ntemperature = \"25 °C\"\nenergies = \"kcal/mol\"\n[species]\nR = { G = 0 }\nA = { G = \"-3 kcal/mol\" }\n[step]\nTS = { reaction = \"R <=> A\", G = \"20 kcal/mol\" }\n" +
+		"TT = { reaction = \"R <=> A\", G = \"25 kcal/mol\" }\n```\n\n```toml claims\n[[claim]]\nsays = \"Low enough.\"\nreading = \"m/barrier/TS\"\nat-most = \"100 kJ/mol\"\n```\n"
+	for _, edit := range [][2]string{{`energies = "kcal/mol"`, `energies = "kJ/mol"`}, {`G = "25 kcal/mol"`, `G = "25 ± 1 kcal/mol"`}} {
+		t.Setenv("SADDLEBOOK_CACHE", t.TempDir())
+		dir, to := t.TempDir(), filepath.Join(t.TempDir(), "out")
+		write(t, dir, map[string]string{"saddlebook.toml": "title = \"T\"\n", "n.md": note})
+		publish(t, dir, to, Options{})
+		write(t, dir, map[string]string{"n.md": strings.Replace(note, edit[0], edit[1], 1)})
+		cached := publish(t, dir, to, Options{})
+		fresh := publish(t, dir, to, Options{Fresh: true})
+		if got := changed(cached, fresh); len(got) > 0 {
+			t.Errorf("%s: %v differ between the cache and a fresh publish", edit[1], got)
+		}
+	}
+}
+
+// Audit finds what publish would trip over.
+func TestAuditFindsWhatPublishWould(t *testing.T) {
+	for _, tt := range []struct {
+		name string
+		with map[string]string
+		want string
+	}{
+		{"a note in the place of a page", map[string]string{"claims.md": "# Claims\n"}, `the note would be published as "claims.html", which is the page of all claims`},
+		{"a file in the place of results", map[string]string{"apart.md": "# Apart\n\n[r](first/results.csv)\n", "first/results.csv": "x\n"}, `"first/results.csv", which is a file of note first.md`},
+		{"a template that asks for too much", map[string]string{"saddlebook.toml": "title = \"T\"\n[theme]\nreplace = { \"claims.html.tmpl\" = \"c.tmpl\" }\n", "c.tmpl": `{{define "title"}}{{end}}{{define "main"}}{{.Nothing}}{{end}}`}, "the theme cannot be used"},
+		{"a second note block", map[string]string{"apart.md": "# Apart\n\n```toml note\nstatus = \"draft\"\n```\n\n```toml note\nstatus = \"in use\"\n```\n"}, "a note has one note block, and the first stands in line 3"},
+		{"a temperature twice", map[string]string{"first.md": strings.Replace(lab["first.md"], "[species]", "at = [\"25 °C\", \"298.15 K\"]\n[species]", 1)}, "is computed twice"},
+	} {
+		t.Run(tt.name, func(t *testing.T) {
+			dir := t.TempDir()
+			write(t, dir, lab)
+			write(t, dir, tt.with)
+			src, err := Locate(dir)
+			if err != nil {
+				t.Fatal(err)
+			}
+			a, err := Audit(context.Background(), src, Options{})
+			if err != nil || !a.Broken {
+				t.Fatalf("broken %v, error %v", a.Broken, err)
+			}
+			var b strings.Builder
+			a.Faults.Write(&b)
+			if !strings.Contains(b.String(), tt.want) {
+				t.Errorf("got\n%swant %q", b.String(), tt.want)
+			}
+		})
+	}
+}

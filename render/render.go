@@ -87,6 +87,9 @@ func at(folder, named string, isDir bool) (Source, error) {
 			return src, err
 		}
 		src.Only = filepath.ToSlash(rel)
+		if path.Ext(src.Only) != ".md" {
+			return src, fmt.Errorf("%s is no note; name a Markdown file (.md) or the folder of a notebook", named)
+		}
 	}
 	return src, nil
 }
@@ -98,7 +101,8 @@ type Options struct {
 	Progress func(done, total int)
 }
 
-// open reads and evaluates a notebook. The study is there whenever the error is nil.
+// open reads and evaluates a notebook, and checks all that a publish would trip
+// over. The study is there whenever the error is nil.
 func open(ctx context.Context, src Source, o Options) (*study.Study, fault.List, error) {
 	book, faults := content.Open(src.FS, src.Name)
 	jobs := o.Jobs
@@ -116,12 +120,33 @@ func open(ctx context.Context, src Source, o Options) (*study.Study, fault.List,
 		return nil, nil, err
 	}
 	faults = append(faults, more...)
+	faults = append(faults, unlaid(s)...)
+	faults = append(faults, collisions(s)...)
 	if _, err := dress(book); err != nil {
 		faults = append(faults, fault.Diagnostic{At: fault.Place{File: path.Join(book.Root, content.SettingsFile)}, Severity: fault.Error, Key: "theme.replace",
 			Msg: fmt.Sprintf("the theme cannot be used: %v", err), Fix: "mend the file that stands in for the theme's own, or leave it out", Err: err})
 	}
 	faults.Sort()
 	return s, faults, nil
+}
+
+// unlaid tells of blocks that were computed and cannot be shown.
+func unlaid(s *study.Study) fault.List {
+	var out fault.List
+	for _, b := range s.Blocks {
+		if !b.Done {
+			continue
+		}
+		sheet, err := lay(b)
+		if err == nil {
+			_, err = sheet.HTML()
+		}
+		if err != nil {
+			out = append(out, fault.Diagnostic{At: b.Source.At, Severity: fault.Error, Block: b.Source.Label,
+				Msg: fmt.Sprintf("the block cannot be shown: %v", err), Fix: "correct what it shows", Err: err})
+		}
+	}
+	return out
 }
 
 // cacheFolder is SADDLEBOOK_CACHE, or a folder in the user's cache; "" when

@@ -8,6 +8,7 @@ import (
 // Site is what every page knows of its notebook.
 type Site struct {
 	Title, Summary string
+	Authors        []string
 	Language       string // a language tag, such as "en"
 	Root           string // leads from the page to the top of the site: "" or "../"
 	Program        string // name and version of the program

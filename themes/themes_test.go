@@ -26,7 +26,7 @@ type sample struct {
 }
 
 func newSample(say func(string) string) sample {
-	site := Site{Title: say("Bench notebook"), Summary: say("Invented notes."), Language: "en", Root: "../", Program: say("Saddlebook, development version")}
+	site := Site{Title: say("Bench notebook"), Summary: say("Invented notes."), Authors: []string{say("bench 3")}, Language: "en", Root: "../", Program: say("Saddlebook, development version")}
 	top := site
 	top.Root = ""
 	findings := []Finding{
@@ -425,5 +425,23 @@ func TestStyle(t *testing.T) {
 				}
 			}
 		}
+	}
+}
+
+// A replaced template is tried before a site is begun.
+func TestTry(t *testing.T) {
+	good, err := Open(Default, nil)
+	if err != nil {
+		t.Fatal(err)
+	}
+	if err := good.Try(); err != nil {
+		t.Errorf("the theme itself: %v", err)
+	}
+	bad, err := Open(Default, map[string]string{"claims.html.tmpl": `{{define "title"}}{{end}}{{define "main"}}{{range .Notes}}{{.Nothing}}{{end}}{{end}}`})
+	if err != nil {
+		t.Fatal(err)
+	}
+	if err := bad.Try(); err == nil {
+		t.Error("a template that asks for a field that is not there passes")
 	}
 }

@@ -3,6 +3,7 @@ package main
 import (
 	"errors"
 	"fmt"
+	"path/filepath"
 
 	"github.com/spf13/cobra"
 
@@ -18,8 +19,8 @@ func drawCommand() *cobra.Command {
 		Example: "  saddlebook draw addition.md hills --to hills.svg",
 		Args:    takes(2, 2, "a note and the id of a figure"),
 		RunE: func(cmd *cobra.Command, args []string) error {
-			if to == "" {
-				return status{lineWrong, "draw needs --to FILE.svg"}
+			if filepath.Ext(to) != ".svg" {
+				return status{lineWrong, fmt.Sprintf("draw writes an SVG, and --to is %q; write --to FILE.svg", to)}
 			}
 			src, err := source(cmd, args[:1])
 			if err != nil {

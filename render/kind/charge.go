@@ -116,7 +116,7 @@ func ratioNumber(a, b float64) Number {
 	case a == 0 && b == 0:
 		return Number{Kind: Nothing, Text: "neither forms"}
 	case b == 0:
-		return Number{Kind: Nothing, Text: "only the first forms"}
+		return Number{Kind: Endless, Text: "only the first forms"}
 	}
 	return Value(a/b, "beyond any number")
 }

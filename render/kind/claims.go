@@ -5,6 +5,7 @@ import (
 	"errors"
 	"fmt"
 	"math"
+	"strconv"
 	"strings"
 
 	"saddlebook/content/fault"
@@ -17,6 +18,7 @@ func init() {
 	Register(Kind[claimsSource, claimsValue]{
 		Name:    "claims",
 		Doc:     "Conclusions that must hold: a reading, a bound, and how likely it must be.",
+		Method:  "Claims are held against the results; their probability is the share of 4096 fixed low-discrepancy draws of the stated errors in which they hold.",
 		Version: 1,
 		Fields: []schema.Field{
 			{Key: "claim", Doc: "the conclusions, each with at-least, at-most or both", Type: schema.Tables, Required: true,
@@ -143,16 +145,21 @@ func (c claimSource) judge(i int, in Inputs) (Finding, *fault.Problem, error) {
 	if f.Value, err = printFor(r, c); err != nil {
 		return f, nil, err
 	}
-	if r.Value.Kind != Real {
+	if r.Value.Kind == Nothing {
 		f.Standing, f.Why = Fails, "the result has no number: "+r.Value.Text
 		return f, nil, nil
 	}
 	x := r.Value.Value
+	if r.Value.Kind == Endless {
+		x = math.Inf(1)
+	}
 	f.Standing = Fails
 	if x >= low && x <= high {
 		f.Standing = Holds
 	}
-	f.Margin = margin(r, x, low, high)
+	if !math.IsInf(x, 0) {
+		f.Margin = margin(r, x, low, high)
+	}
 	draws, err := in.Draws(c.Reading)
 	if err != nil {
 		return f, nil, err
@@ -180,6 +187,8 @@ func (c claimSource) weigh(f *Finding, d Draws, low, high float64) {
 		}
 	}
 	switch {
+	case d.None != "":
+		f.Why = d.None
 	case len(d.Cases) == 0:
 		f.Why = "no energy behind it has a ±"
 	case len(d.Exact) > 0:
@@ -190,7 +199,7 @@ func (c claimSource) weigh(f *Finding, d Draws, low, high float64) {
 	if c.Probability == nil {
 		return
 	}
-	f.Asked = probability(*c.Probability)
+	f.Asked = strconv.FormatFloat(100**c.Probability, 'g', 4, 64) + " %"
 	if f.Standing == Holds && (f.Probability == "" || least < *c.Probability) {
 		f.Standing = Undecided
 	}

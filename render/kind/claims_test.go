@@ -106,3 +106,40 @@ func TestClaimFaults(t *testing.T) {
 		})
 	}
 }
+
+// An infinite ratio is beyond any bound: B forms only by way of A.
+func TestClaimOnAnInfiniteRatio(t *testing.T) {
+	note := "# T\n\n```toml mechanism\n" + `id = "m"
+temperature = "25 °C"
+[species]
+R = { G = 0 }
+A = { G = -3 }
+B = { G = -5 }
+[step]
+T1 = { reaction = "R <=> A", G = 18 }
+T2 = { reaction = "A <=> B", G = 19 }
+` + "```\n\n```toml selectivity\nid = \"limits\"\nmechanism = \"m\"\nfrom = \"R\"\nproducts = [\"A\", \"B\"]\n```\n\n" +
+		"```toml claims\n[[claim]]\nsays = \"A first.\"\nreading = \"limits/kinetic-ratio/A:B\"\nat-least = \"5:1\"\n[[claim]]\nsays = \"Not much.\"\nreading = \"limits/kinetic-ratio/A:B\"\nat-most = \"100:1\"\n```\n"
+	f := findings(t, good(t, note, nil))
+	if f[0].Standing != kind.Holds || f[1].Standing != kind.Fails {
+		t.Errorf("at least 5:1 %s, at most 100:1 %s", f[0].Standing, f[1].Standing)
+	}
+}
+
+// Of two isomers at G = 0 only one sets the scale; the other is taken as exact,
+// and a claim on their ratio has no probability.
+func TestOnlyOneZeroSetsTheScale(t *testing.T) {
+	note := "# T\n\n```toml mechanism\n" + `id = "m"
+temperature = "25 °C"
+[species]
+R = { G = 0 }
+R2 = { G = 0 }
+[step]
+T1 = { reaction = "R <=> R2", G = "18 ± 1" }
+` + "```\n\n```toml equilibrium\nid = \"rest\"\nmechanism = \"m\"\ncharge = { R = \"1 M\" }\namong = [\"R\", \"R2\"]\n```\n\n" +
+		"```toml claims\n[[claim]]\nsays = \"Even.\"\nreading = \"rest/ratio/R:R2\"\nat-least = \"1:2\"\nprobability = 0.9\n```\n"
+	f := findings(t, good(t, note, nil))[0]
+	if f.Standing != kind.Undecided || !strings.Contains(f.Why, "R2") {
+		t.Errorf("%s, %q; want undecided for R2", f.Standing, f.Why)
+	}
+}

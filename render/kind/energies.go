@@ -73,7 +73,7 @@ type given struct {
 	sdEntropy *float64 // J/mol/K
 }
 
-// read turns one set of G, H, S and Cp into an energy. path leads to the set,
+// readAmounts turns one set of G, H, S and Cp into an energy. path leads to the set,
 // home is the mechanism's temperature (K).
 func readAmounts(c conformerSource, home float64, path []string) (given, *fault.Problem) {
 	switch {

@@ -17,6 +17,7 @@ func init() {
 	Register(Kind[equilibriumSource, equilibriumValue]{
 		Name:    "equilibrium",
 		Doc:     "What a charge becomes when every reversible step has come to rest.",
+		Method:  "Equilibrium compositions over the reversible steps in log space, with conservation laws from the stoichiometry.",
 		Version: 1,
 		Fields: []schema.Field{
 			{Key: "id", Doc: "the name by which readings and claims call this block", Type: schema.Text, Required: true, Example: "rest"},

@@ -21,6 +21,7 @@ type Inputs struct {
 // it: one sampling or two, or none when no energy has an error.
 type Draws struct {
 	Cases []Draw
+	None  string   // why there is no draw, where it is not that no energy has an error
 	Exact []string // the states without an error that the result answers to
 }
 
@@ -41,7 +42,7 @@ func (in Inputs) Mechanism(target string) (*kinetics.Mechanism, error) {
 	if err != nil {
 		return nil, err
 	}
-	m, ok := v.(interface{ Mechanism() *kinetics.Mechanism })
+	m, ok := v.(modeller)
 	if !ok {
 		return nil, fmt.Errorf("block %q gives no mechanism", target)
 	}

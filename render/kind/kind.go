@@ -8,6 +8,7 @@ import (
 
 	"saddlebook/content/fault"
 	"saddlebook/content/schema"
+	"saddlebook/kinetics"
 	"saddlebook/render/paper"
 )
 
@@ -15,6 +16,7 @@ import (
 // computes, and what is made of that value. One file registers one kind.
 type Kind[S, R any] struct {
 	Name, Doc string
+	Method    string                                             // how it computes, in a sentence or two for the colophon; "" if it computes nothing
 	Version   int                                                // raise it when results change
 	Fields    []schema.Field                                     // the one source of decoding, reference and schema
 	ID        func(*S) string                                    // "" when the block has none
@@ -27,6 +29,8 @@ type Kind[S, R any] struct {
 	Present   func(*S, R, *paper.Sheet)                          // words, tables, figures; no HTML
 	Sampler   func(context.Context, *S, Inputs) (Sampler, error) // how results answer to shifted energies; nil: not sampled
 	Findings  func(*S, R) []Finding                              // conclusions with their standing; nil: none
+	About     func(*S, R) About                                  // what the block says of its page; nil: nothing
+	Once      bool                                               // a note has one at most
 }
 
 // A Gift says which result keys a kind makes.
@@ -36,16 +40,16 @@ type Gift struct{ Key, Doc string }
 type Ref struct {
 	Target string   // "addition", "other-note#addition", or a whole result key
 	Result bool     // Target is a result key
-	Kinds  []string // the kinds allowed; empty: any
+	Model  bool     // it must give a mechanism
 	Path   []string // the key of the block that names it
 }
 
 // Entry is a registered kind with its types erased, as the study uses it.
 type Entry struct {
 	Name, Doc string
+	Method    string
 	Version   int
 	Fields    []schema.Field
-	Gives     []Gift
 
 	Decode   func(*schema.Node) (any, fault.List)
 	ID       func(spec any) string
@@ -59,6 +63,10 @@ type Entry struct {
 	Present  func(spec, value any, sheet *paper.Sheet)
 	Sampler  func(ctx context.Context, spec any, in Inputs) (Sampler, error) // nil: not sampled
 	Findings func(spec, value any) []Finding
+	About    func(spec, value any) (About, bool)
+	Once     bool
+	Gives    []Gift
+	Model    bool // its value gives a mechanism
 }
 
 var registry = map[string]*Entry{}
@@ -75,7 +83,9 @@ func Register[S, R any](k Kind[S, R]) {
 	if err := schema.Check(k.Fields, new(S)); err != nil {
 		panic(fmt.Sprintf("kind %q: %v", k.Name, err))
 	}
-	e := &Entry{Name: k.Name, Doc: k.Doc, Version: k.Version, Fields: k.Fields, Gives: k.Gives}
+	e := &Entry{Name: k.Name, Doc: k.Doc, Method: k.Method, Version: k.Version, Fields: k.Fields, Gives: k.Gives, Once: k.Once}
+	var r R
+	_, e.Model = any(r).(modeller)
 	e.Decode = func(n *schema.Node) (any, fault.List) {
 		s := new(S)
 		return s, schema.Decode(n, k.Fields, s)
@@ -109,8 +119,17 @@ func Register[S, R any](k Kind[S, R]) {
 		}
 		return k.Findings(spec.(*S), value.(R))
 	}
+	e.About = func(spec, value any) (About, bool) {
+		if k.About == nil {
+			return About{}, false
+		}
+		return k.About(spec.(*S), value.(R)), true
+	}
 	registry[k.Name] = e
 }
+
+// modeller is a value that gives a mechanism to the blocks that name its own.
+type modeller interface{ Mechanism() *kinetics.Mechanism }
 
 func orZero[S, T any](f func(S) T, s S) T {
 	var zero T
@@ -130,5 +149,16 @@ func Names() []string {
 		names = append(names, n)
 	}
 	sort.Strings(names)
+	return names
+}
+
+// Models lists the kinds that give a mechanism.
+func Models() []string {
+	var names []string
+	for _, n := range Names() {
+		if registry[n].Model {
+			names = append(names, n)
+		}
+	}
 	return names
 }

@@ -14,6 +14,7 @@ func init() {
 	Register(Kind[mechanismSource, mechanismValue]{
 		Name:    "mechanism",
 		Doc:     "Species and steps under one id, with the free energies that say which way and how fast.",
+		Method:  "Rate constants by the Eyring equation with the exact constants of 2019; equilibrium constants from the free energies, so that every reversible step obeys detailed balance; positions by the Marcus relation.",
 		Version: 1,
 		Fields:  mechanismFields,
 		ID:      func(s *mechanismSource) string { return s.ID },
@@ -138,7 +139,7 @@ var mechanismFields = []schema.Field{
 	}, energyFields()...)},
 }
 
-// check_ reports whether any problem is an error and not a warning.
+// failed reports whether any problem is an error and not a warning.
 func failed(ps fault.Problems) bool {
 	for _, p := range ps {
 		if p.Severity == fault.Error {

@@ -74,7 +74,9 @@ func presentMechanism(s *mechanismSource, v mechanismValue, sheet *paper.Sheet) 
 			}
 		}
 		for _, h := range v.Held[i] {
-			sheet.Assumption(h)
+			if h != "" {
+				sheet.Assumption(h)
+			}
 		}
 	}
 	presentRacemisation(s, v, sheet)
@@ -90,7 +92,7 @@ func presentMechanism(s *mechanismSource, v mechanismValue, sheet *paper.Sheet) 
 	}
 	sheet.Assumption("Half-lives are those of the one direction alone, as if nothing came back.")
 	if several {
-		sheet.Assumption(fmt.Sprintf("The half-life of a step of more than one molecule is that of its first reactant with the others held at %s; of several molecules of one kind, from that concentration to half of it.", s.others()))
+		sheet.Assumption(fmt.Sprintf("The half-life of a step of more than one molecule is that of the first reactant that is used up, with all others held at %s; where several molecules of it react, from that concentration to half of it.", s.others()))
 	}
 	if change {
 		sheet.Assumption("Where the number of molecules changes in a step, the position of its transition state depends on the standard state of 1 M.")

@@ -136,3 +136,15 @@ TT = { reaction = "R <=> P", same-as = "TS" }
 		near(t, "the same of its twin"+at, (*twin.High-*twin.Low)/2, half, 1e-12)
 	}
 }
+
+// Only what rests on a held energy is flagged.
+func TestOnlyTheStepThatIsHeldIsFlagged(t *testing.T) {
+	s := good(t, "# T\n\n```toml mechanism\nid = \"m\"\ntemperature = \"25 °C\"\nat = [\"80 °C\"]\n[species]\nA = { H = 0, S = 0 }\nB = { H = -2, S = 0 }\n"+
+		"[step]\nT1 = { reaction = \"A <=> B\", H = 19.5, S = 0 }\nT2 = { reaction = \"A <=> B\", barrier = 22 }\n```\n", nil)
+	if a := result(t, s, "m/barrier/T1").Assumes; len(a) != 0 {
+		t.Errorf("T1 follows temperature and is flagged: %q", a)
+	}
+	if a := result(t, s, "m/barrier/T2").Assumes; len(a) == 0 {
+		t.Error("T2 is held constant and is not flagged")
+	}
+}

@@ -16,7 +16,7 @@ import (
 type mechanismValue struct {
 	Model *kinetics.Mechanism
 	Steps [][]stepValue // by temperature, by step
-	Held  [][]string    // by temperature: what was held constant, and its price
+	Held  [][]string    // by temperature, by step: what was held constant, and its price; "" if nothing
 	Exact []string      // states without an error of their own, when others have one
 }
 
@@ -46,11 +46,11 @@ func (s *mechanismSource) tabulate(m *kinetics.Mechanism) (mechanismValue, error
 		var rows []stepValue
 		for _, r := range n.Reactions {
 			row := stepValue{Barrier: r.Barrier, BarrierBack: r.BarrierBack, Reaction: r.DeltaG, K: r.K, Rate: r.Forward, RateBack: r.Back,
-				Molecules: molecules(r.From), MoleculesBack: molecules(r.To)}
+				Molecules: kinetics.Molecules(r.From), MoleculesBack: kinetics.Molecules(r.To)}
 			row.Change = row.MoleculesBack - row.Molecules
-			row.HalfLife = halfLife(r.Forward, row.Molecules, r.From, others)
+			row.HalfLife = r.HalfLife(false, others)
 			if r.Returns {
-				row.HalfLifeBack = halfLife(r.Back, row.MoleculesBack, r.To, others)
+				row.HalfLifeBack = r.HalfLife(true, others)
 			}
 			if !math.IsNaN(r.Position) {
 				chi := r.Position
@@ -59,40 +59,16 @@ func (s *mechanismSource) tabulate(m *kinetics.Mechanism) (mechanismValue, error
 			rows = append(rows, row)
 		}
 		v.Steps = append(v.Steps, rows)
-		v.Held = append(v.Held, m.Held(T.SI))
+		held := make([]string, len(m.Steps))
+		for j := range m.Steps {
+			held[j] = m.HeldStep(j, T.SI)
+		}
+		v.Held = append(v.Held, held)
 	}
 	if m.HasErrors() {
 		v.Exact = m.ExactStates()
 	}
 	return v, nil
-}
-
-// halfLife is ln 2/k for one molecule; for several of one kind, from the stated
-// concentration c (mol/L) to half of it; for several kinds, of the first while
-// the others stay at c. Zero: not a finite time.
-func halfLife(k float64, molecules int, side []kinetics.Term, c float64) float64 {
-	t := 0.0
-	switch {
-	case molecules == 1:
-		t = rate.HalfLife(k)
-	case len(side) == 1: // n A loses n r: from c to c/2
-		n := float64(molecules)
-		t = (math.Pow(2, n-1) - 1) / ((n - 1) * n * k * math.Pow(c, n-1))
-	default:
-		t = rate.HalfLife(k * math.Pow(c, float64(molecules-1)))
-	}
-	if math.IsInf(t, 0) || math.IsNaN(t) {
-		return 0
-	}
-	return t
-}
-
-func molecules(side []kinetics.Term) int {
-	n := 0
-	for _, t := range side {
-		n += t.N
-	}
-	return n
 }
 
 func (s *mechanismSource) results(v mechanismValue) []Result {
@@ -105,7 +81,10 @@ func (s *mechanismSource) results(v mechanismValue) []Result {
 			key := func(quantity string) Key {
 				return Key{ID: s.ID, Quantity: quantity, Item: st.Name, Condition: condition}
 			}
-			assumes := append([]string{}, v.Held[i]...)
+			var assumes []string
+			if h := v.Held[i][j]; h != "" {
+				assumes = []string{h}
+			}
 			add := func(quantity string, x float64, u unit.Unit, f unit.Form, more ...string) {
 				out = append(out, Result{Key: key(quantity), Value: Value(x, "none"), Unit: u, Form: f, Assumes: append(assumes[:len(assumes):len(assumes)], more...)})
 			}
@@ -161,7 +140,7 @@ func (s *mechanismSource) halfLifeNote(molecules int) []string {
 	if molecules == 1 {
 		return nil
 	}
-	return []string{fmt.Sprintf("the half-life is that of the first reactant with the others held at %s; of several molecules of one kind, from that concentration to half of it", s.others())}
+	return []string{fmt.Sprintf("the half-life is that of the first reactant that is used up, with all others held at %s; where several molecules of it react, from that concentration to half of it", s.others())}
 }
 
 func (s *mechanismSource) others() string {

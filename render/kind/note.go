@@ -11,7 +11,7 @@ import (
 )
 
 func init() {
-	Register(Kind[noteSource, NoteValue]{
+	Register(Kind[noteSource, About]{
 		Name:    "note",
 		Doc:     "What the page says of itself: date, authors, tags, status, summary.",
 		Version: 1,
@@ -29,10 +29,12 @@ func init() {
 			}
 			return nil
 		},
-		Compute: func(_ context.Context, s *noteSource, _ Inputs) (NoteValue, error) {
-			return NoteValue{Title: s.Title, Date: s.Date, Authors: s.Authors, Tags: s.Tags, Status: or(s.Status, "in use"), Summary: s.Summary}, nil
+		Compute: func(_ context.Context, s *noteSource, _ Inputs) (About, error) {
+			return About{Title: s.Title, Date: s.Date, Authors: s.Authors, Tags: s.Tags, Status: or(s.Status, "in use"), Summary: s.Summary}, nil
 		},
-		Present: func(*noteSource, NoteValue, *paper.Sheet) {}, // it stands at the head of the page
+		Present: func(*noteSource, About, *paper.Sheet) {}, // it stands at the head of the page
+		About:   func(_ *noteSource, v About) About { return v },
+		Once:    true,
 	})
 }
 
@@ -45,8 +47,8 @@ type noteSource struct {
 	Summary string   `key:"summary"`
 }
 
-// NoteValue is what a note block says of its page.
-type NoteValue struct {
+// About is what a block says of its page.
+type About struct {
 	Title, Date, Status, Summary string
 	Authors, Tags                []string
 }

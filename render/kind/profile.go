@@ -21,6 +21,7 @@ func init() {
 	Register(Kind[profileSource, profileValue]{
 		Name:    "profile",
 		Doc:     "The free-energy profile of one or more paths through a mechanism.",
+		Method:  "Free-energy profiles at 1 M, completed by spectators so that all levels of a path have one composition.",
 		Version: 1,
 		Fields: []schema.Field{
 			{Key: "id", Doc: "the name by which readings and claims call this block", Type: schema.Text, Required: true, Example: "hills"},
@@ -75,6 +76,7 @@ type profileValue struct {
 
 type levelValue struct {
 	State, Label, Spectators string
+	Item                     string // its result: the state, with its spectators where the state stands at two levels
 	Peak                     bool
 	G                        float64  // J/mol above the zero
 	Position                 *float64 // of a peak between its neighbours, as walked
@@ -82,6 +84,11 @@ type levelValue struct {
 
 func (s *profileSource) check() fault.Problems {
 	var ps fault.Problems
+	for i, p := range s.Path {
+		if len(p.Through) == 1 {
+			ps = append(ps, problem([]string{"path", fmt.Sprint(i + 1), "through"}, "the path has one element, and a path leads from a state over a step to a state", "write states and steps in turn, such as [\"R + X\", \"TSa\", \"A\"]"))
+		}
+	}
 	if s.Sides && len(s.Path) != 2 {
 		ps = append(ps, problem([]string{"sides"}, fmt.Sprintf("two sides need two paths, and here are %d", len(s.Path)), "give two paths from one reactant, or leave out sides"))
 	}
@@ -134,7 +141,28 @@ func (s *profileSource) walk(m *kinetics.Mechanism) (profileValue, error) {
 	if len(ps) > 0 {
 		return v, ps
 	}
+	v.name()
 	return v, nil
+}
+
+// name gives every level its result. A state that a path meets again beside
+// other spectators, as the catalyst at the end of a turn, is another level.
+func (v *profileValue) name() {
+	at := map[string]float64{} // by state: its first level
+	for _, path := range v.Paths {
+		for i := range path {
+			l := &path[i]
+			first, met := at[l.State]
+			if !met {
+				at[l.State], first = l.G, l.G
+			}
+			l.Item = l.State
+			if math.Abs(l.G-first) > 1e-6 {
+				l.Item = strings.TrimSuffix(l.State+" + "+l.Spectators, " + ")
+				l.Label = strings.TrimSuffix(or(l.Label, l.State)+" + "+l.Spectators, " + ")
+			}
+		}
+	}
 }
 
 func (s *profileSource) temperature(m *kinetics.Mechanism) unit.Quantity {
@@ -193,11 +221,11 @@ func (s *profileSource) results(v profileValue) []Result {
 	seen := map[string]bool{}
 	for _, path := range v.Paths {
 		for _, l := range path {
-			if seen[l.State] {
+			if seen[l.Item] {
 				continue
 			}
-			seen[l.State] = true
-			out = append(out, Result{Key: Key{ID: s.ID, Quantity: "level", Item: l.State, Condition: ConditionText(v.T)},
+			seen[l.Item] = true
+			out = append(out, Result{Key: Key{ID: s.ID, Quantity: "level", Item: l.Item, Condition: ConditionText(v.T)},
 				Value: Value(l.G, "none"), Unit: s.unit(), Form: unit.FormEnergy, Assumes: v.Assumes})
 		}
 	}
@@ -223,20 +251,20 @@ func (s *profileSource) present(v profileValue, sheet *paper.Sheet) {
 		}
 		dp := diagram.ProfilePath{Name: name}
 		for _, l := range path {
-			cell := sheet.Bare("level/" + l.State + cond)
+			cell := sheet.Bare("level/" + l.Item + cond)
 			chi, position := "–", math.NaN()
 			if l.Position != nil {
 				position = *l.Position
 				chi = unit.Fixed(position, 2)
 			}
-			dp.Points = append(dp.Points, diagram.ProfilePoint{Name: l.State, Label: or(l.Label, l.State), Value: u.Of(l.G), Peak: l.Peak, Position: position, Text: cell.Text})
+			dp.Points = append(dp.Points, diagram.ProfilePoint{Name: l.Item, Label: or(l.Label, l.State), Value: u.Of(l.G), Peak: l.Peak, Position: position, Text: cell.Text})
 			numbers.Rows = append(numbers.Rows, []paper.Cell{paper.Text(name), paper.Text(or(l.Label, l.State)), paper.Text(or(l.Spectators, "–")), cell, paper.Text(chi)})
 			if l.Peak && l.G > top {
-				highest, top = fmt.Sprintf("%s, %s above %s", or(l.Label, l.State), sheet.Value("level/"+l.State+cond).Text, v.Zero), l.G
+				highest, top = fmt.Sprintf("%s, %s above %s", or(l.Label, l.State), sheet.Value("level/"+l.Item+cond).Text, v.Zero), l.G
 			}
-			if !listed[l.State] {
-				listed[l.State] = true
-				sure = append(sure, "level/"+l.State+cond)
+			if !listed[l.Item] {
+				listed[l.Item] = true
+				sure = append(sure, "level/"+l.Item+cond)
 			}
 		}
 		p.Paths = append(p.Paths, dp)

@@ -16,7 +16,8 @@ type NumberKind int
 const (
 	Real    NumberKind = iota // a number in base quantities
 	Words                     // a word, such as "late"
-	Nothing                   // no number: an infinite ratio, a position that does not exist
+	Nothing                   // no number, such as a position that does not exist
+	Endless                   // an infinite ratio: null in data, beyond any bound
 )
 
 // A Number is the value of a result: a real number, words, or nothing (with
@@ -43,12 +44,12 @@ type Result struct {
 	Unit      unit.Unit // the unit it is printed in
 	Form      unit.Form // how it is printed
 	Intervals []spread.Interval
-	Low, High *float64 // 5 and 95 %: the widest of Intervals
+	Low, High *float64 // 5 and 95 %: reach over all of Intervals
 	Assumes   []string
 }
 
-// Widest sets Low and High to the ends of the widest interval: where two
-// samplings exist the less favourable one counts.
+// Widest sets Low and High to reach over all intervals: where two samplings
+// exist the less favourable end of each counts.
 func (r *Result) Widest() {
 	r.Low, r.High = nil, nil
 	for _, i := range r.Intervals {

@@ -15,6 +15,7 @@ func init() {
 	Register(Kind[selectivitySource, selectivityValue]{
 		Name:    "selectivity",
 		Doc:     "Which product forms, at the kinetic limit and at equilibrium, at one or more temperatures.",
+		Method:  "Kinetic limits by state reduction (Grassmann, Taksar and Heyman) of the chain that is left when no listed product reacts; equilibrium ratios from the free energies.",
 		Version: 1,
 		Fields: []schema.Field{
 			{Key: "id", Doc: "the name by which readings and claims call this block", Type: schema.Text, Required: true, Example: "limits"},

@@ -16,7 +16,7 @@ var atField = schema.Field{Key: "at", Doc: "the temperatures", Type: schema.Amou
 
 // mechanismRef is the dependence of a block on the mechanism it names.
 func mechanismRef(target string) []Ref {
-	return []Ref{{Target: target, Kinds: []string{"mechanism"}, Path: []string{"mechanism"}}}
+	return []Ref{{Target: target, Model: true, Path: []string{"mechanism"}}}
 }
 
 // atOr returns the temperatures asked for, or the mechanism's own.

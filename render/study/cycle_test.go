@@ -31,7 +31,7 @@ func init() {
 		Refs: func(s *linkSource) []kind.Ref {
 			var refs []kind.Ref
 			for i, n := range s.Needs {
-				refs = append(refs, kind.Ref{Target: n, Kinds: []string{"link"}, Path: []string{"needs", fmt.Sprint(i + 1)}})
+				refs = append(refs, kind.Ref{Target: n, Path: []string{"needs", fmt.Sprint(i + 1)}})
 			}
 			return refs
 		},

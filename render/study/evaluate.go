@@ -7,7 +7,6 @@ import (
 	"encoding/json"
 	"errors"
 	"fmt"
-	"io"
 	"sync"
 
 	"saddlebook/content/fault"
@@ -82,6 +81,9 @@ func (s *Study) evaluate(ctx context.Context, o Options) (fault.List, error) {
 		}()
 	}
 	workers.Wait()
+	for _, b := range s.Blocks {
+		b.sampled = nil // claims have been weighed; the draws are large
+	}
 	return faults, broken
 }
 
@@ -90,6 +92,8 @@ type stored struct {
 	Value     json.RawMessage
 	Problems  fault.Problems
 	Intervals map[string][]spread.Interval // by key within the block
+	Remarks   []string
+	Draws     string // digest of the sampling: what a claim may see of it
 }
 
 // compute computes one block, or takes it from the cache. The value always
@@ -140,7 +144,7 @@ func (s *Study) compute(ctx context.Context, b *Block) (fault.List, error) {
 			return nil, err
 		}
 		keep.Problems = append(keep.Problems, ps...)
-		keep.Intervals = b.intervals()
+		keep.Intervals, keep.Remarks, keep.Draws = b.intervals(), b.Remarks, b.sampled.digest()
 		s.remember(key, keep)
 	} else {
 		if b.Value, err = b.Kind.Restore(keep.Value); err != nil {
@@ -148,9 +152,13 @@ func (s *Study) compute(ctx context.Context, b *Block) (fault.List, error) {
 		}
 		b.Results = b.Kind.Results(b.Spec, b.Value)
 		b.restoreIntervals(keep.Intervals)
+		b.Remarks = keep.Remarks
 	}
-	b.Hash = HashOf(keep.Value, mustJSON(keep.Intervals))
+	b.Hash = HashOf(keep.Value, mustJSON(b.Results), []byte(keep.Draws))
 	for i, r := range b.Results {
+		if _, twice := b.index[r.Key.Canonical()]; twice {
+			return b.diagnoseAll(fault.Problems{{Severity: fault.Error, Msg: fmt.Sprintf("the result %q is computed twice", r.Key.Local()), Fix: "list each temperature and each name once"}}), nil
+		}
 		b.index[r.Key.Canonical()] = i
 		if first := (kind.Key{ID: r.Key.ID, Quantity: r.Key.Quantity, Item: r.Key.Item}).Canonical(); r.Key.Condition != "" {
 			if _, ok := b.index[first]; !ok {
@@ -289,7 +297,7 @@ func (s *Study) cacheKey(b *Block) (string, error) {
 		part(data)
 	}
 	for _, r := range b.refs {
-		io.WriteString(h, r.Target)
+		part([]byte(r.Target))
 		part([]byte(r.to.Hash))
 	}
 	return hex.EncodeToString(h.Sum(nil)), nil

@@ -26,7 +26,10 @@ func (b *Block) FindingFault(f kind.Finding) fault.Diagnostic {
 			msg += " and has " + f.Probability
 		}
 		msg += " (" + f.Why + ")"
-		fix = "give every energy behind it a ±, narrow the widest, or ask for less"
+		fix = "narrow the widest ± behind it, or ask for less"
+		if f.Probability == "" {
+			fix = "give every energy behind it a ±, or ask for no probability"
+		}
 	}
 	severity := fault.Error
 	if f.Standing == kind.Undecided {

@@ -2,6 +2,9 @@ package study
 
 import (
 	"context"
+	"crypto/sha256"
+	"encoding/binary"
+	"encoding/hex"
 	"errors"
 	"fmt"
 	"math"
@@ -84,8 +87,11 @@ func reals(rs []kind.Result) []float64 {
 	out := make([]float64, len(rs))
 	for i, r := range rs {
 		out[i] = math.NaN()
-		if r.Value.Kind == kind.Real {
+		switch r.Value.Kind {
+		case kind.Real:
 			out[i] = r.Value.Value
+		case kind.Endless:
+			out[i] = math.Inf(1)
 		}
 	}
 	return out
@@ -106,6 +112,26 @@ func raises(m *kinetics.Mechanism, temperatures []float64) (bool, error) {
 		}
 	}
 	return false, nil
+}
+
+// digest is the same for the same draws of all results.
+func (s *sampling) digest() string {
+	if s.runs == nil {
+		return ""
+	}
+	h := sha256.New()
+	for c := range s.runs {
+		fmt.Fprintf(h, "%v %x;", s.cases[c], math.Float64bits(s.raise[c]))
+		for _, column := range s.runs[c] {
+			for _, x := range column {
+				var b [8]byte
+				binary.LittleEndian.PutUint64(b[:], math.Float64bits(x))
+				h.Write(b[:])
+			}
+		}
+	}
+	fmt.Fprintf(h, "%q", s.exact)
+	return hex.EncodeToString(h.Sum(nil))
 }
 
 // findExact tells, for each result, which energies without an error it answers
@@ -158,8 +184,8 @@ func (b *Block) sample(ctx context.Context, in kind.Inputs) (fault.Problems, err
 		}
 		for c := range s.cases {
 			q := spread.Quantiles(s.runs[c][i], 0.05, 0.5, 0.95)
-			if q == nil || !(q[0] < q[2]) {
-				continue // the same at every draw, or not a number at some
+			if !(q[0] < q[2]) || math.IsInf(q[2], 0) {
+				continue // the same at every draw, endless at some, or not a number
 			}
 			b.Results[i].Intervals = append(b.Results[i].Intervals, spread.Interval{Case: s.cases[c], Low: q[0], Median: q[1], High: q[2]})
 		}
@@ -167,10 +193,13 @@ func (b *Block) sample(ctx context.Context, in kind.Inputs) (fault.Problems, err
 	}
 	var ps fault.Problems
 	for c, share := range s.raise {
-		if share > 0.01 {
+		switch {
+		case share > 0.01:
 			ps = append(ps, &fault.Problem{Severity: fault.Warning,
 				Msg: fmt.Sprintf("in %s of the draws (%s) a transition state fell below a side and was raised to it", unit.Percent(share), s.cases[c]),
 				Fix: "narrow the ± of these energies, or treat the step as fast"})
+		case share > 0:
+			b.Remarks = append(b.Remarks, fmt.Sprintf("in %s of the draws (%s) a transition state fell below a side and was raised to it", unit.Percent(share), s.cases[c]))
 		}
 	}
 	return ps, nil
@@ -201,8 +230,13 @@ func (b *Block) draws(ctx context.Context, in kind.Inputs, k kind.Key) (kind.Dra
 		return kind.Draws{}, err
 	}
 	s, err := b.draw(ctx, in)
-	if err != nil || s == nil {
-		return kind.Draws{}, err
+	switch {
+	case ctx.Err() != nil:
+		return kind.Draws{}, ctx.Err()
+	case err != nil: // the block has said so in a warning
+		return kind.Draws{None: "no draw could be made"}, nil
+	case s == nil:
+		return kind.Draws{None: "results of this kind are not sampled"}, nil
 	}
 	var d kind.Draws
 	if s.exact != nil {

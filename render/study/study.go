@@ -43,6 +43,7 @@ type Block struct {
 	Hash    string   // of the results: what depends on this block depends on this
 	Done    bool     // it was computed, without an error
 	Doubts  []string // warnings, for the page
+	Remarks []string // what else the sampling has to say
 
 	wrong    []string // keys at which a fault has been told; a block with any is not computed
 	unlinked bool     // it names a block that is not there
@@ -88,6 +89,7 @@ func Run(ctx context.Context, book *content.Notebook, o Options) (*Study, fault.
 			}
 		}
 	}
+	faults = append(faults, s.once()...)
 	faults = append(faults, s.link()...)
 	faults = append(faults, s.cycles()...)
 	fs, err := s.evaluate(ctx, o)
@@ -136,6 +138,26 @@ func (s *Study) decode(b *content.Block) (*Block, fault.List) {
 		}
 	}
 	return e, faults
+}
+
+// once refuses a second block of a kind that a note has one of.
+func (s *Study) once() fault.List {
+	var out fault.List
+	first := map[string]*Block{} // by note and kind
+	for _, b := range s.Blocks {
+		if !b.Kind.Once {
+			continue
+		}
+		key := b.Source.Note.Path + " " + b.Kind.Name
+		if f := first[key]; f != nil {
+			out = append(out, b.diagnose(&fault.Problem{Severity: fault.Error,
+				Msg: fmt.Sprintf("a note has one %s block, and the first stands in line %d", b.Kind.Name, f.Source.At.Line), Fix: "join the two"}))
+			b.Spec = nil
+			continue
+		}
+		first[key] = b
+	}
+	return out
 }
 
 // hides tells whether a problem may be no more than what follows from a fault
@@ -223,9 +245,9 @@ func (s *Study) resolve(b *Block, r kind.Ref) (*Block, *fault.Problem) {
 		}
 		return nil, &fault.Problem{Path: r.Path, Severity: fault.Error, Msg: msg, Fix: s.suggestBlock(b.Source.Note.Name, note, id)}
 	}
-	if len(r.Kinds) > 0 && !contains(r.Kinds, to.Kind.Name) {
+	if r.Model && !to.Kind.Model {
 		return nil, &fault.Problem{Path: r.Path, Severity: fault.Error,
-			Msg: fmt.Sprintf("%q is a %s", id, to.Kind.Name), Fix: "name a block of kind " + strings.Join(r.Kinds, " or ")}
+			Msg: fmt.Sprintf("%q is a %s", id, to.Kind.Name), Fix: "name a block of kind " + strings.Join(kind.Models(), " or ")}
 	}
 	return to, nil
 }
