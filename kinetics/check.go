@@ -51,7 +51,7 @@ func (m *Mechanism) Check() []Complaint {
 	seen := map[string]bool{}
 	for _, name := range m.States() {
 		if fault := NameFault(name); fault != "" {
-			say(name, "", true, fmt.Sprintf("%q cannot be a name: %s", name, fault), "write a name without + / @ : { } | and arrows, such as TS2' or Na⁺")
+			say(name, "", true, fmt.Sprintf("%q cannot be a name: %s", name, fault), "write a name without + / @ : { } | # and arrows, such as TS2' or Na⁺")
 		}
 		if seen[name] {
 			say(name, "", true, fmt.Sprintf("two states are named %q", name), "rename one of them")

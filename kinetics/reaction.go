@@ -213,7 +213,7 @@ func NameFault(name string) string {
 	case !utf8.ValidString(name):
 		return "it is not UTF-8 text"
 	}
-	if i := strings.IndexAny(name, "+/@:{}|\n\r\t"); i >= 0 {
+	if i := strings.IndexAny(name, "+/@:{}|#\n\r\t"); i >= 0 {
 		return fmt.Sprintf("it has %q in it", name[i])
 	}
 	for _, a := range arrows {

@@ -48,6 +48,20 @@ type Audited struct {
 	Broken bool       // a source is wrong
 }
 
+// Summary words the outcome on one line.
+func (a Audited) Summary() string {
+	if !a.Broken {
+		return a.Tally.String()
+	}
+	errs := 0
+	for _, d := range a.Faults {
+		if d.Severity == fault.Error {
+			errs++
+		}
+	}
+	return count(errs, "error")
+}
+
 // Audit checks sources, links and claims, and writes nothing.
 func Audit(ctx context.Context, src Source, o Options) (Audited, error) {
 	s, faults, err := open(ctx, src, o)

@@ -3,6 +3,8 @@ package render
 import (
 	"fmt"
 	"path"
+	"strings"
+	"unicode"
 
 	"saddlebook/content"
 	"saddlebook/content/fault"
@@ -31,6 +33,9 @@ func collisions(s *study.Study) fault.List {
 		if other == noteOwner && who != noteOwner {
 			return // told by content
 		}
+		for dir := path.Dir(file); dir != "." && other == ""; dir = path.Dir(dir) {
+			other = owner[dir]
+		}
 		if other != "" {
 			out = append(out, fault.Diagnostic{At: at, Severity: fault.Error,
 				Msg: fmt.Sprintf("%s would be published as %q, which is %s", who, file, other), Fix: fix})
@@ -40,6 +45,10 @@ func collisions(s *study.Study) fault.List {
 	}
 	for _, n := range s.Book.Notes {
 		at := fault.Place{File: path.Join(s.Book.Root, n.Path), Line: 1, Col: 1}
+		if strings.ContainsFunc(n.Name, unicode.IsControl) {
+			out = append(out, fault.Diagnostic{At: at, Severity: fault.Error, Msg: fmt.Sprintf("the name of the note %q holds a control character", n.Path), Fix: "rename the file"})
+			continue
+		}
 		take(pageOf(n), noteOwner, at, "give the note another name")
 		for _, name := range filesOf(s, n) {
 			take(name, "a file of note "+n.Path, at, "give the note or the block another name")

@@ -117,6 +117,7 @@ func together(ctx context.Context, jobs int, works []func() error) error {
 	if jobs <= 0 {
 		jobs = runtime.NumCPU()
 	}
+	jobs = max(1, min(jobs, len(works)))
 	next := make(chan func() error)
 	errs := make([]error, jobs)
 	var group sync.WaitGroup

@@ -69,7 +69,11 @@ func Locate(name string) (Source, error) {
 
 func at(folder, named string, isDir bool) (Source, error) {
 	folder = filepath.Clean(folder)
-	src := Source{FS: os.DirFS(folder), Folder: folder, Name: filepath.ToSlash(folder)}
+	root, err := os.OpenRoot(folder) // a link that leads out of the notebook is not followed
+	if err != nil {
+		return Source{}, err
+	}
+	src := Source{FS: root.FS(), Folder: folder, Name: filepath.ToSlash(folder)}
 	if src.Name == "." {
 		src.Name = ""
 	}

@@ -32,7 +32,7 @@ func auditCommand() *cobra.Command {
 			if format == "json" {
 				err = a.WriteJSON(cmd.OutOrStdout())
 			} else if err = report(cmd, a.Faults); err == nil {
-				_, err = fmt.Fprintln(cmd.OutOrStdout(), a.Tally)
+				_, err = fmt.Fprintln(cmd.OutOrStdout(), a.Summary())
 			}
 			switch {
 			case err != nil:

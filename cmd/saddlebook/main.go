@@ -45,14 +45,14 @@ func run(args []string, out, errs io.Writer) int {
 	switch {
 	case err == nil:
 		return good
+	case ctx.Err() != nil:
+		fmt.Fprintln(errs, "saddlebook: interrupted; what stood before stands")
+		return machineFails
 	case errors.As(err, &s):
 		if s.text != "" {
 			fmt.Fprintln(errs, "saddlebook: "+s.text)
 		}
 		return s.code
-	case ctx.Err() != nil:
-		fmt.Fprintln(errs, "saddlebook: interrupted; nothing was written")
-		return machineFails
 	}
 	fmt.Fprintf(errs, "saddlebook: %s; see: saddlebook --help\n", plainly(err))
 	return lineWrong
@@ -87,8 +87,9 @@ func rootCommand(out, errs io.Writer) *cobra.Command {
 every number is computed from the block it stands by, and checks every stated
 conclusion again each time anything changes.
 
-Exit status: 0 good; 1 a claim does not hold; 2 a source is wrong and nothing
-is written; 3 the machine failed (disk, port, git); 4 a wrong command line.`,
+Exit status: 0 good; 1 a claim does not hold or is undecided; 2 a source is
+wrong and nothing is written; 3 the machine failed (disk, port, git) or the
+target was refused; 4 a wrong command line.`,
 		SilenceErrors: true,
 		SilenceUsage:  true,
 	}

@@ -50,5 +50,11 @@ func progress(w io.Writer) func(done, total int) {
 }
 
 func addJobs(cmd *cobra.Command, jobs *int) {
+	cmd.PreRunE = func(*cobra.Command, []string) error {
+		if *jobs < 0 {
+			return status{lineWrong, fmt.Sprintf("--jobs %d makes no sense; give 1 or more, or leave it out", *jobs)}
+		}
+		return nil
+	}
 	cmd.Flags().IntVar(jobs, "jobs", 0, "how many blocks to compute at once (default: one for each processor)")
 }

@@ -25,7 +25,7 @@ var messages = []struct {
 	{`id = "a/b"
 temperature = 25
 `, []string{
-		`n.md:1:6: error: mechanism "addition", id: the name "a/b" holds the character '/'; leave it out: / @ : { } | + have a meaning of their own in result keys and reactions`,
+		`n.md:1:6: error: mechanism "addition", id: the name "a/b" holds the character '/'; leave it out: / @ : { } | + # have a meaning of their own in result keys and reactions`,
 		`n.md:2:15: error: mechanism "addition", temperature: "25" has no unit where a temperature is wanted; write "25 °C" or "25 K"`,
 	}},
 	{`id = ''
@@ -110,7 +110,7 @@ fast = -inf
 	{ok + `products = ["A", "A/B", 3, "A"]
 claim = { says = 'x' }
 `, []string{
-		`n.md:3:18: error: mechanism "addition", products.2: the name "A/B" holds the character '/'; leave it out: / @ : { } | + have a meaning of their own in result keys and reactions`,
+		`n.md:3:18: error: mechanism "addition", products.2: the name "A/B" holds the character '/'; leave it out: / @ : { } | + # have a meaning of their own in result keys and reactions`,
 		`n.md:3:25: error: mechanism "addition", products.3: the number 3 stands where a name is wanted; write "A"`,
 		`n.md:3:28: error: mechanism "addition", products.4: the name "A" is listed twice; leave one out`,
 		`n.md:4:9: error: mechanism "addition", claim: a single table stands where a list of tables is wanted; put it in brackets: claim = [{ ... }]`,
@@ -133,7 +133,7 @@ says = "x"
 		`n.md:9:5: error: mechanism "addition", replace.x: the number 3 stands where a text is wanted; write "3"`,
 		`n.md:11:5: error: mechanism "addition", products.a: the list is empty; write the names that "a" stands for`,
 		`n.md:12:11: error: mechanism "addition", products.b.2: the name "A" is listed twice; leave one out`,
-		`n.md:12:16: error: mechanism "addition", products.b.3: the name "B|" holds the character '|'; leave it out: / @ : { } | + have a meaning of their own in result keys and reactions`,
+		`n.md:12:16: error: mechanism "addition", products.b.3: the name "B|" holds the character '|'; leave it out: / @ : { } | + # have a meaning of their own in result keys and reactions`,
 		`n.md:13:1: error: mechanism "addition", claim: a single table stands where a list of tables is wanted; write its header as [[claim]]`,
 	}},
 	{ok + `[species]
@@ -145,7 +145,7 @@ energies = "kJ/mol"
 "" = {}
 `, []string{
 		`n.md:4:5: error: mechanism "addition", species.R: the number 1 stands where a table is wanted; write R = { G = "12.4 ± 0.5" }`,
-		`n.md:5:1: error: mechanism "addition", species.A/B: the name "A/B" holds the character '/'; leave it out: / @ : { } | + have a meaning of their own in result keys and reactions`,
+		`n.md:5:1: error: mechanism "addition", species.A/B: the name "A/B" holds the character '/'; leave it out: / @ : { } | + # have a meaning of their own in result keys and reactions`,
 		`n.md:5:26: error: mechanism "addition", species.A/B.H: unit "kJ" is not known; write "kJ/mol" or "kcal/mol"`,
 		`n.md:5:35: error: mechanism "addition", species.A/B.S: "-33" has no unit where an entropy or heat capacity per mole is wanted; write "-33 cal/mol/K" or "-33 J/mol/K"`,
 		`n.md:5:48: error: mechanism "addition", species.A/B.forms: the number 2.0 stands where a whole number is wanted; write forms = 2`,

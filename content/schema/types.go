@@ -76,8 +76,11 @@ func (b Bound) Hundred() bool {
 	return b.Ratio && found && errX == nil && errY == nil && math.Abs(x+y-100) < 1e-9
 }
 
+// longestName is how many characters a name may have: it becomes a file name.
+const longestName = 100
+
 // forbiddenInNames are the characters that result keys and reactions are made of.
-const forbiddenInNames = "/@:{}|+"
+const forbiddenInNames = "/@:{}|+#"
 
 // NameFault says what is wrong with a name that becomes part of result keys, and
 // the remedy; msg is "" if nothing is.
@@ -90,9 +93,12 @@ func NameFault(name string) (msg, fix string) {
 	case strings.ContainsAny(name, "\r\n\t"):
 		return "the name " + quote(name) + " has a tab or a line end in it", "write it on one line"
 	}
+	if n := len([]rune(name)); n > longestName {
+		return fmt.Sprintf("the name %s has %d characters", quote(name), n), fmt.Sprintf("shorten it to %d or fewer, and put the rest into a label or title", longestName)
+	}
 	if i := strings.IndexAny(name, forbiddenInNames); i >= 0 {
 		return fmt.Sprintf("the name %s holds the character %q", quote(name), name[i]),
-			"leave it out: / @ : { } | + have a meaning of their own in result keys and reactions"
+			"leave it out: / @ : { } | + # have a meaning of their own in result keys and reactions"
 	}
 	return "", ""
 }

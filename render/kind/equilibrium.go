@@ -20,7 +20,7 @@ func init() {
 		Method:  "Equilibrium compositions over the reversible steps in log space, with conservation laws from the stoichiometry.",
 		Version: 1,
 		Fields: []schema.Field{
-			{Key: "id", Doc: "the name by which readings and claims call this block", Type: schema.Text, Required: true, Example: "rest"},
+			{Key: "id", Doc: "the name by which readings and claims call this block", Type: schema.Text, Name: true, Required: true, Example: "rest"},
 			usesMechanism,
 			chargeField("what is charged, by species", true),
 			basisField,

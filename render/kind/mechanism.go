@@ -102,7 +102,7 @@ type sharedSource struct {
 }
 
 var mechanismFields = []schema.Field{
-	{Key: "id", Doc: "the name by which other blocks and readings call this mechanism", Type: schema.Text, Required: true, Example: "addition"},
+	{Key: "id", Doc: "the name by which other blocks and readings call this mechanism", Type: schema.Text, Name: true, Required: true, Example: "addition"},
 	{Key: "title", Doc: "the heading of its table", Type: schema.Text, Example: "Addition to enone 3"},
 	{Key: "energies", Doc: "the unit of bare energies", Type: schema.Text, OneOf: []string{"kcal/mol", "kJ/mol", "eV", "Eh", "cm-1"}, Default: "kcal/mol"},
 	{Key: "temperature", Doc: "the temperature at which given G values hold", Type: schema.Amount, Dims: []unit.Dim{unit.Temperature}, Required: true, Example: "25 °C"},

@@ -48,8 +48,8 @@ func presentMechanism(s *mechanismSource, v mechanismValue, sheet *paper.Sheet) 
 			}
 			name := paper.Text(or(st.Label, st.Name))
 			name.Flags = stepFlags(st)
-			life := value("half-life", row.HalfLife > 0)
-			if row.HalfLifeBack > 0 {
+			life := value("half-life", row.HalfLife != 0)
+			if row.HalfLifeBack != 0 {
 				life.Beside = "back " + sheet.Value(key("half-life-back")).Text
 			}
 			chi := sheet.Value(key("position"))
@@ -66,7 +66,7 @@ func presentMechanism(s *mechanismSource, v mechanismValue, sheet *paper.Sheet) 
 			sure = append(sure, "barrier"+at, "rate"+at)
 		}
 		for j, st := range m.Steps {
-			if v.Steps[i][j].HalfLife > 0 {
+			if v.Steps[i][j].HalfLife != 0 {
 				sure = append(sure, "half-life/"+st.Name+"@"+cond)
 			}
 			if s.racemises(m, st) {

@@ -25,8 +25,9 @@ func (v mechanismValue) Mechanism() *kinetics.Mechanism { return v.Model }
 
 type stepValue struct {
 	Barrier, BarrierBack, Reaction   float64 // J/mol
-	K, Rate, RateBack                float64
-	HalfLife, HalfLifeBack           float64  // s; 0: none
+	LnK                              float64 // K itself may be beyond a float64
+	Rate, RateBack                   float64
+	HalfLife, HalfLifeBack           float64  // s; 0: none; below 0: longer than any time
 	Position                         *float64 // nil: no barrier either way
 	Molecules, MoleculesBack, Change int
 }
@@ -45,12 +46,12 @@ func (s *mechanismSource) tabulate(m *kinetics.Mechanism) (mechanismValue, error
 		}
 		var rows []stepValue
 		for _, r := range n.Reactions {
-			row := stepValue{Barrier: r.Barrier, BarrierBack: r.BarrierBack, Reaction: r.DeltaG, K: r.K, Rate: r.Forward, RateBack: r.Back,
+			row := stepValue{Barrier: r.Barrier, BarrierBack: r.BarrierBack, Reaction: r.DeltaG, LnK: -r.DeltaG / (rate.R * T.SI), Rate: finite(r.Forward), RateBack: finite(r.Back),
 				Molecules: kinetics.Molecules(r.From), MoleculesBack: kinetics.Molecules(r.To)}
 			row.Change = row.MoleculesBack - row.Molecules
-			row.HalfLife = r.HalfLife(false, others)
+			row.HalfLife = stored(r.HalfLife(false, others))
 			if r.Returns {
-				row.HalfLifeBack = r.HalfLife(true, others)
+				row.HalfLifeBack = stored(r.HalfLife(true, others))
 			}
 			if !math.IsNaN(r.Position) {
 				chi := r.Position
@@ -86,7 +87,7 @@ func (s *mechanismSource) results(v mechanismValue) []Result {
 				assumes = []string{h}
 			}
 			add := func(quantity string, x float64, u unit.Unit, f unit.Form, more ...string) {
-				out = append(out, Result{Key: key(quantity), Value: Value(x, "none"), Unit: u, Form: f, Assumes: append(assumes[:len(assumes):len(assumes)], more...)})
+				out = append(out, Result{Key: key(quantity), Value: Value(x, beyond(x)), Unit: u, Form: f, Assumes: append(assumes[:len(assumes):len(assumes)], more...)})
 			}
 			add("barrier", row.Barrier, energy, unit.FormEnergy)
 			if st.Returns {
@@ -96,10 +97,10 @@ func (s *mechanismSource) results(v mechanismValue) []Result {
 			add("rate", row.Rate, rateUnit(row.Molecules), unit.FormRate)
 			if st.Returns {
 				add("rate-back", row.RateBack, rateUnit(row.MoleculesBack), unit.FormRate)
-				add("equilibrium-constant", row.K, constantUnit(row.Change), unit.FormConstant)
+				add("equilibrium-constant", math.Exp(row.LnK), constantUnit(row.Change), unit.FormConstant)
 			}
-			if row.HalfLife > 0 {
-				add("half-life", row.HalfLife, seconds, unit.FormSpan, s.halfLifeNote(row.Molecules)...)
+			if row.HalfLife != 0 {
+				add("half-life", told(row.HalfLife), seconds, unit.FormSpan, s.halfLifeNote(row.Molecules)...)
 			}
 			if s.racemises(v.Model, st) {
 				note := "racemisation is twice as fast as the exchange of the enantiomers, since each exchange undoes two molecules' worth of ee"
@@ -107,8 +108,8 @@ func (s *mechanismSource) results(v mechanismValue) []Result {
 				add("racemisation-half-life", rate.HalfLife(2*row.Rate), seconds, unit.FormSpan, note)
 				add("ee-loss", -math.Log(0.99)/(2*row.Rate), seconds, unit.FormSpan, note)
 			}
-			if row.HalfLifeBack > 0 {
-				add("half-life-back", row.HalfLifeBack, seconds, unit.FormSpan, s.halfLifeNote(row.MoleculesBack)...)
+			if row.HalfLifeBack != 0 {
+				add("half-life-back", told(row.HalfLifeBack), seconds, unit.FormSpan, s.halfLifeNote(row.MoleculesBack)...)
 			}
 			var note []string
 			if row.Change != 0 {
@@ -125,6 +126,32 @@ func (s *mechanismSource) results(v mechanismValue) []Result {
 		}
 	}
 	return out
+}
+
+// stored keeps a half-life in a form that JSON can hold; told takes it back.
+func stored(life float64) float64 {
+	if math.IsInf(life, 0) || math.IsNaN(life) {
+		return -1
+	}
+	return life
+}
+
+func told(life float64) float64 {
+	if life < 0 {
+		return math.Inf(1)
+	}
+	return life
+}
+
+// finite keeps a rate within what JSON can hold.
+func finite(k float64) float64 { return math.Min(k, math.MaxFloat64) }
+
+// beyond is what stands in the place of a value that is no number.
+func beyond(x float64) string {
+	if math.IsInf(x, 0) {
+		return "beyond any number"
+	}
+	return "none"
 }
 
 // racemises tells whether a step turns one enantiomer into the other.

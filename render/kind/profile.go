@@ -24,7 +24,7 @@ func init() {
 		Method:  "Free-energy profiles at 1 M, completed by spectators so that all levels of a path have one composition.",
 		Version: 1,
 		Fields: []schema.Field{
-			{Key: "id", Doc: "the name by which readings and claims call this block", Type: schema.Text, Required: true, Example: "hills"},
+			{Key: "id", Doc: "the name by which readings and claims call this block", Type: schema.Text, Name: true, Required: true, Example: "hills"},
 			usesMechanism,
 			{Key: "path", Doc: "the paths, each a list of states and steps in turn", Type: schema.Tables, Required: true, Example: `[{ through = ["R + X", "TSa", "A"] }]`, Fields: []schema.Field{
 				{Key: "name", Doc: "the name of the path", Type: schema.Text, Default: "its last state", Example: "1,2"},

@@ -18,7 +18,7 @@ func init() {
 		Method:  "Kinetic limits by state reduction (Grassmann, Taksar and Heyman) of the chain that is left when no listed product reacts; equilibrium ratios from the free energies.",
 		Version: 1,
 		Fields: []schema.Field{
-			{Key: "id", Doc: "the name by which readings and claims call this block", Type: schema.Text, Required: true, Example: "limits"},
+			{Key: "id", Doc: "the name by which readings and claims call this block", Type: schema.Text, Name: true, Required: true, Example: "limits"},
 			usesMechanism,
 			{Key: "from", Doc: "the species whose fate is followed", Type: schema.Text, Required: true, Wants: "species", Example: "R"},
 			{Key: "products", Doc: "the products to compare; a product may be a sum of species", Type: schema.Groups, Required: true, Wants: "species", Example: `["A", "B"]`},

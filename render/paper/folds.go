@@ -1,6 +1,9 @@
 package paper
 
-import "fmt"
+import (
+	"fmt"
+	"net/url"
+)
 
 // folds writes what stands folded below a block, in one row: the numbers of its
 // figures, what it was given, how sure its results are, method and assumptions, and the source; at
@@ -42,7 +45,7 @@ func (s *Sheet) folds(w *writer) {
 	}
 	if s.block.ID != "" {
 		w.raw("<p class=\"handle\"><a")
-		w.attr("href", "#"+s.block.Anchor())
+		w.attr("href", (&url.URL{Fragment: s.block.Anchor()}).String())
 		w.raw(">")
 		w.text(s.block.Kind + " " + s.block.ID)
 		w.raw("</a></p>\n")

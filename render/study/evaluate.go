@@ -29,7 +29,7 @@ func (s *Study) evaluate(ctx context.Context, o Options) (fault.List, error) {
 			}
 		}
 	}
-	jobs := max(o.Jobs, 1)
+	jobs := min(max(o.Jobs, 1), max(len(s.Blocks), 1))
 	ready := make(chan *Block, len(s.Blocks))
 	left := len(s.Blocks)
 	if left == 0 {

@@ -28,6 +28,9 @@ type sampling struct {
 	exact [][]string    // by result: the states without an error that it answers to
 }
 
+// mostValues bounds the work of one sampling to some seconds.
+const mostValues = 6_000_000
+
 // draw runs the sampler of the block once.
 func (b *Block) draw(ctx context.Context, in kind.Inputs) (*sampling, error) {
 	if b.Kind.Sampler == nil {
@@ -45,6 +48,9 @@ func (s *sampling) run(ctx context.Context, b *Block, in kind.Inputs) error {
 	m := sampler.Mechanism
 	if !m.HasErrors() {
 		return nil
+	}
+	if n := len(b.Results) * spread.Draws * len(m.Plans()); n > mostValues {
+		return fmt.Errorf("%d results by %d draws are %d values, and at most %d are computed", len(b.Results), spread.Draws*len(m.Plans()), n, mostValues)
 	}
 	if err := s.findExact(b, sampler); err != nil {
 		return err
@@ -173,7 +179,7 @@ func (b *Block) sample(ctx context.Context, in kind.Inputs) (fault.Problems, err
 		if errors.As(err, &cs) {
 			msg = cs[0].Msg
 		}
-		return fault.Problems{{Severity: fault.Warning, Msg: "no interval could be given: " + msg, Fix: "check the ± of the energies behind this block", Err: err}}, nil
+		return fault.Problems{{Severity: fault.Warning, Msg: "no interval could be given: " + msg, Fix: "check the ± of the energies behind this block, or part it into smaller ones", Err: err}}, nil
 	}
 	if s == nil || len(s.cases) == 0 {
 		return nil, nil

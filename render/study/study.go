@@ -295,15 +295,6 @@ func (s *Study) suggestBlock(here, note, id string) string {
 	return "write one of " + strings.Join(local, ", ") + ", or note#id for one of another note"
 }
 
-func contains(list []string, s string) bool {
-	for _, x := range list {
-		if x == s {
-			return true
-		}
-	}
-	return false
-}
-
 // cycles refuses blocks that depend on each other in a circle.
 func (s *Study) cycles() fault.List {
 	var faults fault.List
