@@ -5,6 +5,7 @@ import (
 	"strings"
 
 	"saddlebook/kinetics"
+	"saddlebook/kinetics/thermo"
 	"saddlebook/kinetics/unit"
 	"saddlebook/render/paper"
 )
@@ -51,7 +52,7 @@ func (s *mechanismSource) energyTable(v mechanismValue) paper.Table {
 		inBlock[st.Name] = st.energySource
 		barrier[st.Name] = st.Barrier
 	}
-	given := func(name string) (string, []string) {
+	given := func(name string, tabled thermo.Energy) (string, []string) {
 		e, written := inBlock[name]
 		var remarks []string
 		if e.Standard != "" {
@@ -61,19 +62,20 @@ func (s *mechanismSource) energyTable(v mechanismValue) paper.Table {
 		case barrier[name] != nil:
 			return "barrier " + barrier[name].String(), remarks
 		case !written || e.none():
-			return "sum of " + listWords(s.Table.Sum) + " in " + s.Table.File, remarks
+			g := unit.Print(tabled.At(v.Model.Temperature), unit.Must(or(s.Energies, "kcal/mol"), unit.MolarEnergy), unit.FormEnergy)
+			return "G " + g, append(remarks, "sum of "+listWords(s.Table.Sum)+" in "+s.Table.File)
 		}
 		return e.words(), remarks
 	}
 	for _, sp := range v.Model.Species {
-		text, remarks := given(sp.Name)
+		text, remarks := given(sp.Name, sp.Energy)
 		if sp.Forms > 1 {
 			remarks = append(remarks, fmt.Sprintf("stands for %d forms", sp.Forms))
 		}
 		row(sp.Name, sp.Label, text, append(remarks, fromDefaults(text, sp.SD)...))
 	}
 	for _, st := range v.Model.Steps {
-		text, remarks := given(st.Name)
+		text, remarks := given(st.Name, st.Energy)
 		row(st.Name, st.Label, text, append(remarks, fromDefaults(text, st.SD)...))
 	}
 	return t
