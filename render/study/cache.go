@@ -72,12 +72,21 @@ func identity() ([]byte, error) {
 		return nil, err
 	}
 	defer f.Close()
+	id := identityOf(f)
+	if id == nil {
+		return nil, fmt.Errorf("%s cannot be read whole", name)
+	}
+	return id, nil
+}
+
+// identityOf is nil if the program cannot be read.
+func identityOf(program io.Reader) []byte {
 	h := sha256.New()
-	if _, err := io.Copy(h, f); err != nil {
-		return nil, err
+	if _, err := io.Copy(h, program); err != nil {
+		return nil
 	}
 	fmt.Fprintf(h, "%s fma=%v", runtime.GOARCH, cpu.X86.HasFMA)
-	return h.Sum(nil), nil
+	return h.Sum(nil)
 }
 
 func (s *Study) recall(key string, into *stored) bool {
