@@ -72,7 +72,9 @@ func ParseKey(text string) (Key, error) {
 	var k Key
 	rest := strings.TrimSpace(text)
 	if note, after, ok := strings.Cut(rest, "#"); ok {
-		k.Note, rest = strings.TrimSpace(note), after
+		if k.Note, rest = strings.TrimSpace(note), after; k.Note == "" {
+			return k, fmt.Errorf("%w: no note stands before # in %q", ErrKey, text)
+		}
 	}
 	if at := strings.LastIndex(rest, "@"); at >= 0 {
 		k.Condition, rest = strings.TrimSpace(rest[at+1:]), rest[:at]

@@ -26,7 +26,7 @@ func TestKeys(t *testing.T) {
 			t.Errorf("%q written and read again: %v, %v", tt.text, again, err)
 		}
 	}
-	for _, bad := range []string{"", "one", "a//b", "a/b/c/d", "a/b@", "/b/c"} {
+	for _, bad := range []string{"", "one", "a//b", "#a/b", " # a/b", "a/b/c/d", "a/b@", "/b/c"} {
 		if k, err := ParseKey(bad); err == nil {
 			t.Errorf("%q was read as %v", bad, k)
 		}
