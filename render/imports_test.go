@@ -24,6 +24,7 @@ var allowed = map[string][]string{
 	"kinetics/rate":     {},
 	"kinetics/branch":   {},
 	"kinetics/spread":   {},
+	"kinetics/stiff":    {"kinetics/stiff"},
 	"render":            {"render", "content", "kinetics", "diagram", "themes"},
 	"render/kind":       {"content/fault", "content/schema", "kinetics", "diagram", "render/paper"},
 	"render/history":    {},
