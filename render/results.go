@@ -3,7 +3,6 @@ package render
 import (
 	"context"
 	"encoding/csv"
-	"encoding/json"
 	"fmt"
 	"io"
 	"strconv"
@@ -69,10 +68,7 @@ func WriteResults(w io.Writer, lines []Line, format string) error {
 		for _, l := range lines {
 			list = append(list, l.json())
 		}
-		enc := json.NewEncoder(w)
-		enc.SetEscapeHTML(false)
-		enc.SetIndent("", "  ")
-		return enc.Encode(list)
+		return writeJSON(w, list)
 	}
 	return fmt.Errorf("%q is not a format; write text, csv or json", format)
 }

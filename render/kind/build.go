@@ -33,7 +33,7 @@ func (s *mechanismSource) build(in Inputs) (*kinetics.Mechanism, fault.Problems)
 	if s.Table != nil {
 		rows, problems := s.Table.read(in, s.Energies)
 		b.problems = append(b.problems, problems...)
-		if failed(problems) {
+		if problems.Failed() {
 			return nil, b.problems
 		}
 		species, steps = merge(species, steps, rows)
@@ -62,13 +62,13 @@ func (s *mechanismSource) build(in Inputs) (*kinetics.Mechanism, fault.Problems)
 	}
 	b.sharing(m)
 	b.mirror(m)
-	if failed(b.problems) {
+	if b.problems.Failed() {
 		return nil, b.problems
 	}
 	for _, c := range m.Check() {
 		b.complain(c)
 	}
-	if failed(b.problems) {
+	if b.problems.Failed() {
 		return nil, b.problems
 	}
 	for _, T := range s.temperatures() {

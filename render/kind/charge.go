@@ -27,7 +27,7 @@ func concentrations(m *kinetics.Mechanism, charge []schema.NamedAmount, basis st
 	}
 	base := math.NaN()
 	if basis != "" {
-		if speciesIndex(m, basis) < 0 {
+		if m.Index(basis) < 0 {
 			ps = append(ps, unknownSpecies(m, basis, []string{"basis"}))
 		}
 		for _, a := range charge {
@@ -41,7 +41,7 @@ func concentrations(m *kinetics.Mechanism, charge []schema.NamedAmount, basis st
 	}
 	for _, a := range charge {
 		path := []string{"charge", a.Name}
-		i := speciesIndex(m, a.Name)
+		i := m.Index(a.Name)
 		switch {
 		case i < 0:
 			ps = append(ps, unknownSpecies(m, a.Name, path))
@@ -60,15 +60,6 @@ func concentrations(m *kinetics.Mechanism, charge []schema.NamedAmount, basis st
 	return c, ps
 }
 
-func speciesIndex(m *kinetics.Mechanism, name string) int {
-	for i, s := range m.Species {
-		if s.Name == name {
-			return i
-		}
-	}
-	return -1
-}
-
 func unknownSpecies(m *kinetics.Mechanism, name string, path []string) *fault.Problem {
 	return problem(path, fmt.Sprintf("%q is not a species of mechanism %q", name, m.ID), suggest(name, m.States()[:len(m.Species)]))
 }
@@ -84,7 +75,7 @@ func groupsOf(m *kinetics.Mechanism, groups []schema.Group, key string) ([][]int
 			if k < len(group.Paths) {
 				path = append(path, group.Paths[k]...)
 			}
-			i := speciesIndex(m, name)
+			i := m.Index(name)
 			if i < 0 {
 				ps = append(ps, unknownSpecies(m, name, path))
 				continue
@@ -103,7 +94,7 @@ func groupsOf(m *kinetics.Mechanism, groups []schema.Group, key string) ([][]int
 // species, or by its own name.
 func groupLabel(m *kinetics.Mechanism, g schema.Group) string {
 	if len(g.Members) == 1 && g.Members[0] == g.Name {
-		if i := speciesIndex(m, g.Name); i >= 0 {
+		if i := m.Index(g.Name); i >= 0 {
 			return or(m.Species[i].Label, g.Name)
 		}
 	}

@@ -3,7 +3,6 @@ package kind
 import (
 	"context"
 
-	"saddlebook/content/fault"
 	"saddlebook/content/schema"
 	"saddlebook/kinetics"
 	"saddlebook/kinetics/unit"
@@ -26,7 +25,7 @@ func init() {
 		},
 		Compute: func(_ context.Context, s *mechanismSource, in Inputs) (mechanismValue, error) {
 			m, problems := s.build(in)
-			if failed(problems) {
+			if problems.Failed() {
 				return mechanismValue{}, problems
 			}
 			v, err := s.tabulate(m)
@@ -57,7 +56,7 @@ func init() {
 		Present: (*mechanismSource).present,
 		Sampler: func(_ context.Context, s *mechanismSource, in Inputs) (Sampler, error) {
 			m, problems := s.build(in)
-			if failed(problems) {
+			if problems.Failed() {
 				return Sampler{}, problems
 			}
 			return Sampler{Mechanism: m, Temperatures: kelvins(s.temperatures()), Results: func(m *kinetics.Mechanism) ([]Result, error) {
@@ -137,16 +136,6 @@ var mechanismFields = []schema.Field{
 		{Key: "degeneracy", Doc: "number of equivalent paths, in both directions", Type: schema.Real, Default: "1", Example: "2"},
 		{Key: "transmission", Doc: "transmission coefficient, in both directions", Type: schema.Real, Default: "1"},
 	}, energyFields()...)},
-}
-
-// failed reports whether any problem is an error and not a warning.
-func failed(ps fault.Problems) bool {
-	for _, p := range ps {
-		if p.Severity == fault.Error {
-			return true
-		}
-	}
-	return false
 }
 
 func (s *mechanismSource) present(v mechanismValue, sheet *paper.Sheet) {

@@ -92,7 +92,7 @@ func (s *selectivitySource) limits(m *kinetics.Mechanism) (selectivityValue, err
 	groups, ps := groupsOf(m, s.Products, "products")
 	held, more := concentrations(m, s.Charge, s.Basis)
 	ps = append(ps, more...)
-	from := speciesIndex(m, s.From)
+	from := m.Index(s.From)
 	if from < 0 {
 		ps = append(ps, unknownSpecies(m, s.From, []string{"from"}))
 	}

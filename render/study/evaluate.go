@@ -121,7 +121,7 @@ func (s *Study) compute(ctx context.Context, b *Block) (fault.List, error) {
 		var ps fault.Problems
 		switch {
 		case errors.As(err, &ps):
-			if hasError(ps) {
+			if ps.Failed() {
 				return b.diagnoseAll(ps), nil
 			}
 			keep.Problems = ps
@@ -191,15 +191,6 @@ func (s *Study) rest(ctx context.Context, b *Block, in kind.Inputs) (fault.List,
 		}
 	}
 	return out, nil
-}
-
-func hasError(ps fault.Problems) bool {
-	for _, p := range ps {
-		if p.Severity == fault.Error {
-			return true
-		}
-	}
-	return false
 }
 
 func (b *Block) diagnoseAll(ps fault.Problems) fault.List {
