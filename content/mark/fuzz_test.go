@@ -53,13 +53,25 @@ func FuzzParse(f *testing.F) {
 				t.Errorf("no information string at %d of %q", b.Info, source)
 			}
 		}
-		checkNoneVanished(t, source, html, p)
+		checkNoneVanished(t, source, filled(html, holes), p)
 		for _, q := range p.Faults {
 			if q.Start < 0 || q.Start > len(source) || q.Msg == "" || q.Fix == "" {
 				t.Errorf("fault %+v", q)
 			}
 		}
 	})
+}
+
+// filled is the page with a sign in every hole, so that what stands on either
+// side of one does not meet.
+func filled(html string, holes []Hole) string {
+	var b strings.Builder
+	last := 0
+	for _, h := range holes {
+		b.WriteString(html[last:h.At] + "•")
+		last = h.At
+	}
+	return b.String() + html[last:]
 }
 
 // checkNoneVanished counts: each `{=` of the source is a reading, a fault, code on
@@ -75,6 +87,9 @@ func checkNoneVanished(t *testing.T, source, html string, p *Page) {
 	}
 	lost := 0
 	for _, f := range p.Faults {
+		if f.Warn && strings.HasPrefix(f.Msg, "the footnote ") {
+			return // it is left out, as the warning says, and the code in it too
+		}
 		if !f.Warn && strings.HasPrefix(source[f.Start:], "{=") {
 			lost++
 		}
@@ -87,7 +102,7 @@ func checkNoneVanished(t *testing.T, source, html string, p *Page) {
 	if len(p.Readings)+lost+inBlocks+onPage < all {
 		t.Errorf("%d of `{=`, but %d readings, %d faults, %d in blocks, %d on the page\nsource %q\nhtml %q", all, len(p.Readings), lost, inBlocks, onPage, source, html)
 	}
-	if literal := strings.Count(code.ReplaceAllString(html, ""), "{="); literal > lost {
+	if literal := strings.Count(code.ReplaceAllString(html, "•"), "{="); literal > lost {
 		t.Errorf("%d of `{=` stand literally on the page, %d faults\nsource %q\nhtml %q", literal, lost, source, html)
 	}
 }
