@@ -6,105 +6,10 @@ import (
 
 	"saddlebook/kinetics"
 	"saddlebook/kinetics/rate"
+	"saddlebook/kinetics/thermo"
 	"saddlebook/kinetics/unit"
 	"saddlebook/render/paper"
 )
-
-// presentMechanism shows the steps, a table for each temperature.
-func presentMechanism(s *mechanismSource, v mechanismValue, sheet *paper.Sheet) {
-	m := v.Model
-	energy := or(s.Energies, "kcal/mol")
-	beside := "kJ/mol"
-	if energy == "kJ/mol" {
-		beside = "kcal/mol"
-	}
-	var sure []string
-	for i, T := range s.temperatures() {
-		cond := ConditionText(T)
-		t := paper.Table{
-			Caption: fmt.Sprintf("%s at %s", or(m.Title, "Steps"), unit.Print(T.SI, T.Unit, unit.FormPlain)),
-			Columns: []paper.Column{
-				{Head: "Step"}, {Head: "Reaction"},
-				{Head: "ΔG‡", Unit: energy, Number: true}, {Head: "ΔG‡ back", Unit: energy, Number: true}, {Head: "ΔG", Unit: energy, Number: true},
-				{Head: "k", Number: true}, {Head: "K", Number: true}, {Head: s.halfLifeHead(v), Number: true}, {Head: "χ", Number: true},
-			},
-		}
-		for j, st := range m.Steps {
-			row := v.Steps[i][j]
-			key := func(quantity string) string { return quantity + "/" + st.Name + "@" + cond }
-			value := func(quantity string, present bool) paper.Cell {
-				if !present {
-					return paper.Text("–")
-				}
-				return sheet.Value(key(quantity))
-			}
-			energyCell := func(quantity string, x float64, present bool) paper.Cell {
-				c := value(quantity, present)
-				if present {
-					c.Text = sheet.Bare(key(quantity)).Text
-					c.Beside = unit.Print(x, unit.Must(beside, unit.MolarEnergy), unit.FormEnergy)
-				}
-				return c
-			}
-			name := paper.Text(or(st.Label, st.Name))
-			name.Flags = stepFlags(st)
-			life := value("half-life", row.HalfLife != 0)
-			if row.HalfLifeBack != 0 {
-				life.Beside = "back " + sheet.Value(key("half-life-back")).Text
-			}
-			chi := sheet.Value(key("position"))
-			chi.Beside = sheet.Value(key("character")).Text
-			t.Rows = append(t.Rows, []paper.Cell{
-				name, paper.Text(reactionText(m, st)),
-				energyCell("barrier", row.Barrier, true), energyCell("barrier-back", row.BarrierBack, st.Returns), energyCell("reaction-energy", row.Reaction, true),
-				value("rate", true), value("equilibrium-constant", st.Returns), life, chi,
-			})
-		}
-		sheet.Table(t)
-		for _, st := range m.Steps {
-			at := "/" + st.Name + "@" + cond
-			sure = append(sure, "barrier"+at, "rate"+at)
-		}
-		for j, st := range m.Steps {
-			if v.Steps[i][j].HalfLife != 0 {
-				sure = append(sure, "half-life/"+st.Name+"@"+cond)
-			}
-			if s.racemises(m, st) {
-				sure = append(sure, "ee-loss/"+st.Name+"@"+cond)
-			}
-		}
-		for _, h := range v.Held[i] {
-			if h != "" {
-				sheet.Assumption(h)
-			}
-		}
-	}
-	presentRacemisation(s, v, sheet)
-	sheet.Given(s.energyTable(v))
-	sheet.Intervals(sure...)
-	sheet.Method("Rate constants: Eyring equation with the exact constants of 2019; equilibrium constants from the free energies, so that each reversible step obeys detailed balance. Position: the Marcus relation χ = √f / (√f + √b) of the forward and back barriers f and b; early below 0.45, late above 0.55.")
-	sheet.Assumption("Transmission coefficients and path degeneracies are 1 unless the block says otherwise; they act in both directions.")
-	sheet.Assumption(s.standardWords())
-	several, change := false, false
-	for _, row := range v.Steps[0] {
-		several = several || row.Molecules > 1 || row.MoleculesBack > 1
-		change = change || row.Change != 0
-	}
-	sheet.Assumption("Half-lives are those of the one direction alone, as if nothing came back.")
-	if several {
-		sheet.Assumption(fmt.Sprintf("The half-life of a step of more than one molecule is that of the first reactant that is used up, with all others held at %s; where several molecules of it react, from that concentration to half of it.", s.others()))
-	}
-	if change {
-		sheet.Assumption("Where the number of molecules changes in a step, the position of its transition state depends on the standard state of 1 M.")
-	}
-	if m.Method != "" {
-		sheet.Method("Energies: " + m.Method)
-	}
-	for _, src := range sources(m) {
-		sheet.Method(src)
-	}
-	describeErrors(v, sheet)
-}
 
 // standardWords says at which standard states the energies were given.
 func (s *mechanismSource) standardWords() string {
@@ -223,4 +128,112 @@ func reactionText(m *kinetics.Mechanism, s kinetics.Step) string {
 		arrow = " → "
 	}
 	return side(s.From) + arrow + side(s.To)
+}
+
+// halfLifeHead names the concentration where a half-life depends on one.
+func (s *mechanismSource) halfLifeHead(v mechanismValue) string {
+	for _, row := range v.Steps[0] {
+		if row.Molecules > 1 {
+			return "Half-life at " + s.others()
+		}
+	}
+	return "Half-life"
+}
+
+// stepFlags are the marks of a step whose rate is not that of its barrier alone.
+func stepFlags(st kinetics.Step) []string {
+	var flags []string
+	if !st.Returns {
+		flags = append(flags, "no return")
+	}
+	if st.Degeneracy != 1 {
+		flags = append(flags, "degeneracy "+unit.Digits(st.Degeneracy, 2))
+	}
+	if st.Transmission != 1 {
+		flags = append(flags, "transmission "+unit.Digits(st.Transmission, 2))
+	}
+	return flags
+}
+
+// energyTable lists every state with its energy as given: the key from names
+// to labels, and what the page can be held to.
+func (s *mechanismSource) energyTable(v mechanismValue) paper.Table {
+	t := paper.Table{Caption: "Energies as given, where no unit is written in " + or(s.Energies, "kcal/mol"),
+		Columns: []paper.Column{{Head: "State"}, {Head: "Name"}, {Head: "Energy"}, {Head: "Remarks"}}}
+	row := func(name, label, energy string, remarks []string) {
+		t.Rows = append(t.Rows, []paper.Cell{paper.Text(name), paper.Text(or(label, "–")), paper.Text(energy), paper.Text(or(strings.Join(remarks, "; "), "–"))})
+	}
+	inBlock := map[string]energySource{}
+	barrier := map[string]*unit.Quantity{}
+	for _, sp := range s.Species {
+		inBlock[sp.Name] = sp.energySource
+	}
+	for _, st := range s.Step {
+		inBlock[st.Name] = st.energySource
+		barrier[st.Name] = st.Barrier
+	}
+	given := func(name string, tabled thermo.Energy) (string, []string) {
+		e, written := inBlock[name]
+		var remarks []string
+		if e.Standard != "" {
+			remarks = append(remarks, "at "+e.Standard)
+		}
+		switch {
+		case barrier[name] != nil:
+			return "barrier " + barrier[name].String(), remarks
+		case !written || e.none():
+			g := unit.Print(tabled.At(v.Model.Temperature), unit.Must(or(s.Energies, "kcal/mol"), unit.MolarEnergy), unit.FormEnergy)
+			return "G " + g, append(remarks, "sum of "+listWords(s.Table.Sum)+" in "+s.Table.File)
+		}
+		return e.words(), remarks
+	}
+	for _, sp := range v.Model.Species {
+		text, remarks := given(sp.Name, sp.Energy)
+		if sp.Forms > 1 {
+			remarks = append(remarks, fmt.Sprintf("stands for %d forms", sp.Forms))
+		}
+		row(sp.Name, sp.Label, text, append(remarks, fromDefaults(text, sp.SD)...))
+	}
+	for _, st := range v.Model.Steps {
+		text, remarks := given(st.Name, st.Energy)
+		row(st.Name, st.Label, text, append(remarks, fromDefaults(text, st.SD)...))
+	}
+	return t
+}
+
+// words writes an energy as its author gave it.
+func (e energySource) words() string {
+	if e.SameAs != "" {
+		return "same as " + e.SameAs
+	}
+	if len(e.Conformers) > 0 {
+		var parts []string
+		for _, c := range e.Conformers {
+			parts = append(parts, c.words())
+		}
+		return "conformers: " + strings.Join(parts, "; ")
+	}
+	return conformerSource{e.G, e.H, e.S, e.Cp}.words()
+}
+
+func (c conformerSource) words() string {
+	var parts []string
+	for _, p := range []struct {
+		name string
+		q    *unit.Quantity
+	}{{"G", c.G}, {"H", c.H}, {"S", c.S}, {"Cp", c.Cp}} {
+		if p.q != nil {
+			parts = append(parts, p.name+" "+strings.ReplaceAll(p.q.String(), "-", "−"))
+		}
+	}
+	return strings.Join(parts, ", ")
+}
+
+// fromDefaults tells the error that a state has from the defaults of the
+// mechanism, since its energy as given shows none.
+func fromDefaults(given string, sd *float64) []string {
+	if sd == nil || *sd == 0 || strings.Contains(given, "±") {
+		return nil
+	}
+	return []string{"own error ± " + unit.Print(*sd, unit.Must("kcal/mol"), unit.FormEnergy) + " from error"}
 }
