@@ -88,6 +88,9 @@ func filesOf(s *study.Study, n *content.Note) []string {
 		for i := range sheet.Figures() {
 			out = append(out, n.Name+"/"+figureName(b, i)+".svg")
 		}
+		for _, d := range sheet.Files() {
+			out = append(out, n.Name+"/"+dataName(b, d))
+		}
 	}
 	if results {
 		out = append(out, n.Name+"/results.csv", n.Name+"/results.json")

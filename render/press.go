@@ -14,6 +14,7 @@ import (
 	"saddlebook/content"
 	"saddlebook/diagram/ink"
 	"saddlebook/render/kind"
+	"saddlebook/render/paper"
 	"saddlebook/render/site"
 	"saddlebook/render/study"
 	"saddlebook/themes"
@@ -169,6 +170,15 @@ func (p *press) downloads(n *content.Note, stage *site.Stage) ([]themes.Link, er
 				return nil, err
 			}
 		}
+		for _, d := range sheet.Files() {
+			var out bytes.Buffer
+			if err := d.CSV(&out); err != nil {
+				return nil, err
+			}
+			if err := give(n.Name+"/"+dataName(b, d), dataName(b, d), out.Bytes()); err != nil {
+				return nil, err
+			}
+		}
 	}
 	if len(lines) == 0 {
 		return links, nil
@@ -191,6 +201,9 @@ func figureName(b *content.Block, i int) string {
 	}
 	return fmt.Sprintf("%s-%d", b.Anchor(), i+1)
 }
+
+// dataName is the file of a block's numbers.
+func dataName(b *content.Block, d paper.Data) string { return b.Anchor() + "-" + d.Name + ".csv" }
 
 // relative is the address of one file of the site as seen from another.
 func relative(from, to string) string {

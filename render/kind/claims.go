@@ -18,7 +18,7 @@ func init() {
 	Register(Kind[claimsSource, claimsValue]{
 		Name:    "claims",
 		Doc:     "Conclusions that must hold: a reading, a bound, and how likely it must be.",
-		Method:  "Claims are held against the results; their probability is the share of 4096 fixed low-discrepancy draws of the stated errors in which they hold.",
+		Method:  "Claims are held against the results; their probability is the share of fixed low-discrepancy draws of the stated errors (4096, or 512 of a run) in which they hold.",
 		Version: 1,
 		Fields: []schema.Field{
 			{Key: "claim", Doc: "the conclusions, each with at-least, at-most or both", Type: schema.Tables, Required: true,

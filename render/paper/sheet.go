@@ -33,6 +33,7 @@ type Sheet struct {
 	uncertain   []string
 	given       *Table
 	figures     []Figure
+	data        []Data
 	errs        []error
 }
 

@@ -49,15 +49,19 @@ func (s *sampling) run(ctx context.Context, b *Block, in kind.Inputs) error {
 	if !m.HasErrors() {
 		return nil
 	}
-	if n := len(b.Results) * spread.Draws * len(m.Plans()); n > mostValues {
-		return fmt.Errorf("%d results by %d draws are %d values, and at most %d are computed", len(b.Results), spread.Draws*len(m.Plans()), n, mostValues)
+	draws := sampler.Draws
+	if draws == 0 {
+		draws = spread.Draws
+	}
+	if n := len(b.Results) * draws * len(m.Plans()); n > mostValues {
+		return fmt.Errorf("%d results by %d draws are %d values, and at most %d are computed", len(b.Results), draws*len(m.Plans()), n, mostValues)
 	}
 	if err := s.findExact(b, sampler); err != nil {
 		return err
 	}
 	for _, plan := range m.Plans() {
 		raised := 0
-		values, err := spread.Sample(plan, spread.Draws, func(shift []float64) ([]float64, error) {
+		values, err := spread.Sample(plan, draws, func(shift []float64) ([]float64, error) {
 			if err := ctx.Err(); err != nil {
 				return nil, err
 			}
@@ -83,7 +87,7 @@ func (s *sampling) run(ctx context.Context, b *Block, in kind.Inputs) error {
 		}
 		s.cases = append(s.cases, plan.Case)
 		s.runs = append(s.runs, values)
-		s.raise = append(s.raise, float64(raised)/spread.Draws)
+		s.raise = append(s.raise, float64(raised)/float64(draws))
 	}
 	return nil
 }
