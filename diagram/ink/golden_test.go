@@ -6,6 +6,7 @@ import (
 	"math"
 	"os"
 	"path/filepath"
+	"slices"
 	"testing"
 
 	"saddlebook/diagram"
@@ -26,10 +27,14 @@ func peak(name string, v, position float64) diagram.ProfilePoint {
 type scener interface{ Scene() (diagram.Scene, error) }
 
 // figures are the golden cases: invented chemistry, each for one feature.
-var figures = []struct {
+var figures = slices.Concat(plainFigures, timeCourses)
+
+type golden struct {
 	name   string
 	figure scener
-}{
+}
+
+var plainFigures = []golden{
 	{"one_step", diagram.Profile{ID: "one-step", Title: "One step", Unit: "kcal/mol", Paths: []diagram.ProfilePath{{
 		Points: []diagram.ProfilePoint{level("enone 3 + nucleophile", 0), peak("TSa‡", 13.8, 0.41), level("1,2-adduct", -5.1)},
 	}}}},
@@ -69,6 +74,10 @@ var figures = []struct {
 	{"shares", diagram.Bars{ID: "shares", Title: "Shares at equilibrium", Axis: "share at equilibrium", Groups: []diagram.BarGroup{
 		{Name: "−78 °C", Bars: []diagram.Bar{{Name: "1,4-adduct", Share: 0.9991, Text: "99.91 %", Low: ref(0.981), High: ref(0.99995)}, {Name: "1,2-adduct", Share: 0.0009, Text: "0.09 %", Low: ref(0.00005), High: ref(0.019)}, {Name: "enone 3", Share: 0, Text: "2 × 10^-7 %"}}},
 		{Name: "25 °C", Bars: []diagram.Bar{{Name: "1,4-adduct", Share: 0.721, Low: ref(0.55), High: ref(0.84)}, {Name: "1,2-adduct", Share: 0.262, Low: ref(0.14), High: ref(0.42)}, {Name: "enone 3", Share: 0.017}}},
+	}}},
+	{"signed", diagram.SignedBars{ID: "signed", Groups: []diagram.SignedGroup{
+		{Name: "at 25 °C", Bars: []diagram.SignedBar{{Name: "TS1", Value: 0.04}, {Name: "TS2", Value: 0.93, Low: ref(0.71), High: ref(0.99)}, {Name: "off-cycle dimer Pd2L2", Value: -1.86, Low: ref(-1.95), High: ref(-1.4)}, {Name: "TS3‡", Value: 0}}},
+		{Name: "at 80 °C", Bars: []diagram.SignedBar{{Name: "TS1", Value: 0.41}, {Name: "TS2", Value: 0.57}, {Name: "off-cycle dimer Pd2L2", Value: -0.62}, {Name: "TS3‡", Value: 0.02, Text: "0.02 (all at 80 °C)"}}},
 	}}},
 }
 
