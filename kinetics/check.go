@@ -76,7 +76,9 @@ func (m *Mechanism) Check() []Complaint {
 		if s.SD != nil && !(*s.SD >= 0 && !math.IsInf(*s.SD, 0)) {
 			say(s.Name, "", true, fmt.Sprintf("a standard deviation of %g J/mol makes no sense", *s.SD), "give a finite number, 0 or more")
 		}
-		checkEnergy(s.Name, s.Energy, say)
+		if !s.Unknown {
+			checkEnergy(s.Name, s.Energy, say)
+		}
 	}
 	for i, s := range m.Steps {
 		if len(s.From) == 0 || len(s.To) == 0 {
@@ -85,11 +87,13 @@ func (m *Mechanism) Check() []Complaint {
 		if s.SD != nil && !(*s.SD >= 0 && !math.IsInf(*s.SD, 0)) {
 			say(s.Name, "", true, fmt.Sprintf("a standard deviation of %g J/mol makes no sense", *s.SD), "give a finite number, 0 or more")
 		}
-		if c, mixed := m.mixed(i); mixed {
-			c.Msg += fmt.Sprintf(", so it can be used at %s only", temperatureText(m.Temperature))
+		if c, mixed := m.mixed(i, math.NaN()); mixed {
+			c.Msg += fmt.Sprintf(", so it can be used at %s only", temperatureText(m.mixedHome(i)))
 			out = append(out, c)
 		}
-		checkEnergy(s.Name, s.Energy, say)
+		if s.Law == nil {
+			checkEnergy(s.Name, s.Energy, say)
+		}
 	}
 	m.checkFormulas(say)
 	if err := m.stated().Check(); err != nil {
@@ -112,19 +116,8 @@ func (m *Mechanism) Check() []Complaint {
 	if err != nil {
 		return append(out, err.(Complaints)...)
 	}
-	for _, r := range n.Reactions {
-		var ways []string
-		if r.Barrier < lowBarrier {
-			ways = append(ways, fmt.Sprintf("%s from %s", energyText(r.Barrier), sideText(r.From, n.Names)))
-		}
-		if r.Returns && r.BarrierBack < lowBarrier {
-			ways = append(ways, fmt.Sprintf("%s from %s", energyText(r.BarrierBack), sideText(r.To, n.Names)))
-		}
-		if len(ways) > 0 {
-			say(r.Name, "", false, fmt.Sprintf("step %s has a barrier of only %s at %s, and below 3 kcal/mol transition state theory does not give its rate", r.Name, strings.Join(ways, " and "), temperatureText(n.T)),
-				"take its rate as an upper bound, or join the two states it links into one")
-		}
-	}
+	out = append(out, n.Warnings...)
+	m.doubts(n, say)
 	return out
 }
 

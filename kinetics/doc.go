@@ -26,6 +26,17 @@
 // position of a transition state is √f/(√f + √r) with f and r the barriers
 // forward and back.
 //
+// A step may state its rate in place of an energy (Law): a measured constant, at
+// its temperature, carried to others by Ea or at the ΔG‡ that it implies; the
+// diffusion limit; or an equilibrium that is kept fast. Its equilibrium constant
+// is k over k-back, or K, or that of the species. Species without an energy take
+// theirs from such constants: each is one linear equation, ΣνG = −RT ln K. What
+// is left free stands at 0, and a step whose free energy of reaction nothing
+// gives has NaN for it. Constants that say the same thing twice, around a cycle
+// or beside energies, must agree within 5 %, and the last then follows from the
+// others; beyond that they are refused. Tunnelling and the limit by diffusion
+// multiply both directions, as degeneracy does.
+//
 // # Errors
 //
 // What an author can cause comes back as a *ReactionError (a reaction that
@@ -47,6 +58,7 @@
 // Page numbers and DOIs are from memory, unverified.
 //
 //   - rate constants: Eyring, J. Chem. Phys. 3, 107 (1935), doi:10.1063/1.1749604
+//   - diffusion limit: von Smoluchowski, Z. Phys. Chem. 92, 129 (1917)
 //   - position: Marcus, J. Phys. Chem. 72, 891 (1968), doi:10.1021/j100849a019
 //   - fast exchange: Seeman, Chem. Rev. 83, 83 (1983), doi:10.1021/cr00054a001
 //   - branching without subtraction: Grassmann, Taksar, Heyman, Oper. Res. 33,

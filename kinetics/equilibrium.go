@@ -147,3 +147,64 @@ func (n *Network) Drained(species int) bool {
 	}
 	return false
 }
+
+// EquilibriumShares returns the shares of the products at equilibrium, which sum
+// to 1: those of any charge where their ratios do not depend on one, else those
+// of the charge given (mol/L, by species; nil: none is stated). whyNot says in
+// words why there are none. The error is that of Equilibrium.
+func (n *Network) EquilibriumShares(products []int, charge []float64) (shares []float64, whyNot string, err error) {
+	for _, p := range products {
+		if n.Drained(p) {
+			return nil, "equilibrium is not reachable: a step without return drains " + n.Names[p], nil
+		}
+	}
+	values := make([]float64, len(products))
+	free, lowest := true, math.Inf(1)
+	for _, p := range products {
+		_, ok := n.EquilibriumRatio(p, products[0])
+		free = free && ok
+		lowest = math.Min(lowest, n.G[p])
+	}
+	if free {
+		for i, p := range products {
+			values[i] = math.Exp((lowest - n.G[p]) / (rate.R * n.T))
+		}
+		return normal(values), "", nil
+	}
+	for i := range n.Reactions {
+		for _, p := range products {
+			if r := &n.Reactions[i]; !r.Returns && countOf(r.To, p) > 0 {
+				return nil, fmt.Sprintf("equilibrium is not reachable: %s forms by a step without return", n.Names[p]), nil
+			}
+		}
+	}
+	if charge == nil {
+		return nil, "the ratio at equilibrium depends on the charge: state one", nil
+	}
+	eq, err := n.Equilibrium(charge)
+	if err != nil {
+		return nil, "", err
+	}
+	for i, p := range products {
+		values[i] = eq.C[p]
+	}
+	if shares = normal(values); shares == nil {
+		return nil, "none of the products can form from the charge", nil
+	}
+	return shares, "", nil
+}
+
+// normal divides by the sum; nil if there is nothing.
+func normal(values []float64) []float64 {
+	total := 0.0
+	for _, x := range values {
+		total += x
+	}
+	if !(total > 0) {
+		return nil
+	}
+	for i := range values {
+		values[i] /= total
+	}
+	return values
+}

@@ -74,3 +74,40 @@ func ExampleMechanism_Held() {
 	// 0
 	// TS: its G is held constant from −78 °C to 25 °C; over 103 K an unknown ΔS‡ of −30 cal/mol/K would move this barrier by 3.1 kcal/mol (12.9 kJ/mol)
 }
+
+// A mechanism of measured rates: no species has an energy, and K follows from
+// the constants both ways.
+func ExampleLaw() {
+	names := []string{"R", "X", "A"}
+	from, to, returns, err := kinetics.ParseReaction("R + X <=> A", names)
+	if err != nil {
+		fmt.Println(err)
+		return
+	}
+	const home = 298.15
+	ea, eaBack := 52e3, 90e3 // J/mol
+	m := &kinetics.Mechanism{ID: "binding", Temperature: home}
+	for _, n := range names {
+		m.Species = append(m.Species, kinetics.Species{Name: n, Unknown: true})
+	}
+	m.Steps = []kinetics.Step{{Name: "TS", From: from, To: to, Returns: returns, Law: &kinetics.Law{
+		Kind:    kinetics.Measured,
+		Forward: &kinetics.Constant{K: 0.12, At: home, Ea: &ea},
+		Back:    &kinetics.Constant{K: 2e-4, At: home, Ea: &eaBack},
+	}}}
+	for _, T := range []float64{298.15, 333.15} {
+		n, err := m.At(T)
+		if err != nil {
+			fmt.Println(err)
+			return
+		}
+		r := n.Reactions[0]
+		fmt.Printf("%.2f K: k = %.2g L/mol/s, K = %.3g L/mol, ΔG = %.1f kJ/mol\n", T, r.Forward, r.K, r.DeltaG/1000)
+	}
+	heat, _ := m.Enthalpy(home)
+	fmt.Printf("ΔH = %.0f kJ/mol\n", heat[0]/1000)
+	// Output:
+	// 298.15 K: k = 0.12 L/mol/s, K = 600 L/mol, ΔG = -15.9 kJ/mol
+	// 333.15 K: k = 1.1 L/mol/s, K = 120 L/mol, ΔG = -13.3 kJ/mol
+	// ΔH = -38 kJ/mol
+}

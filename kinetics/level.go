@@ -60,6 +60,9 @@ func (n *Network) Levels(path []string, zero []Term) ([]Level, error) {
 	if err := w.carried(n, path, start); err != nil {
 		return nil, err
 	}
+	if err := n.common(w, path, zero, start); err != nil {
+		return nil, err
+	}
 	// What any level lacks stands beside all of them, the zero too.
 	extra := make([]int, len(n.Names))
 	for _, d := range w.moved {

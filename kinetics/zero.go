@@ -2,6 +2,7 @@ package kinetics
 
 import (
 	"fmt"
+	"math"
 	"strings"
 )
 
@@ -85,6 +86,46 @@ func (n *Network) search(start, want []int, borrow bool) []int {
 					queue = append(queue, next)
 				}
 			}
+		}
+	}
+	return nil
+}
+
+// common refuses a path to levels whose height above the zero nothing gives:
+// beyond a step without return between species that have no energy.
+func (n *Network) common(w *walked, path []string, zero []Term, start []int) error {
+	if n.frame == nil {
+		return nil
+	}
+	base := n.counts(zero)
+	for i, d := range w.moved {
+		row := make([]float64, len(n.Names))
+		for s := range row {
+			row[s] = float64(start[s] + d.change[s] - base[s])
+		}
+		if d.step >= 0 {
+			r := &n.Reactions[d.step]
+			for s, k := range n.counts(r.From) { // its height is known above From
+				row[s] += float64(k - d.needs[s])
+			}
+		}
+		if !n.frame.joins(row) {
+			var open []string
+			for _, e := range w.moved[:i+1] {
+				if e.step >= 0 && math.IsNaN(n.Reactions[e.step].DeltaG) {
+					open = append(open, n.Reactions[e.step].Name)
+				}
+			}
+			why := "nothing gives the free energies that join them"
+			if len(open) > 0 {
+				why = fmt.Sprintf("nothing gives the free energy of reaction of step %s", open[0])
+			}
+			element := i
+			if i == 0 {
+				element = -1
+			}
+			return &PathError{Element: element, Msg: fmt.Sprintf("%s and the zero %s have no common zero: %s", strings.TrimSpace(path[i]), sideText(zero, n.Names), why),
+				Fix: "give the species energies, or end the path before that step"}
 		}
 	}
 	return nil

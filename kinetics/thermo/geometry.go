@@ -29,13 +29,13 @@ type shape struct {
 func (m *Molecule) shape() (shape, error) {
 	if len(m.Atoms) > 0 {
 		if m.Mass != 0 || len(m.Rotation) > 0 {
-			return shape{}, fmt.Errorf("%w: the shape is said twice; give Atoms alone, or Mass with Rotation", rate.ErrDomain)
+			return shape{}, fmt.Errorf("%w: the shape is said twice; give atoms alone, or mass with rotation", rate.ErrDomain)
 		}
 		mass, moments, err := inertia(m.Atoms)
 		return shape{mass, constants(moments)}, err
 	}
 	if !(m.Mass > 0) || math.IsInf(m.Mass, 0) {
-		return shape{}, &rate.DomainError{What: "mass (kg/mol)", Value: m.Mass, Fix: "give a finite one above zero, or Atoms"}
+		return shape{}, &rate.DomainError{What: "mass (kg/mol)", Value: m.Mass, Fix: "give a finite one above zero, or atoms"}
 	}
 	if n := len(m.Rotation); n != 0 && n != 1 && n != 3 {
 		return shape{}, &rate.DomainError{What: "number of rotational constants", Value: float64(n), Fix: "give none for an atom, one for a linear molecule, three for any other"}
@@ -159,7 +159,7 @@ func (a Atom) mass() (float64, error) {
 	}
 	m, ok := isotopeMass[a.Symbol]
 	if !ok {
-		return 0, fmt.Errorf("%w: no mass is known for the symbol %q; give its Mass", rate.ErrDomain, a.Symbol)
+		return 0, fmt.Errorf("%w: no mass is known for the symbol %q; correct it, or give the mass of the atom", rate.ErrDomain, a.Symbol)
 	}
 	return m * MassUnit, nil
 }

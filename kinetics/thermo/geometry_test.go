@@ -146,7 +146,7 @@ func TestGeometryCheck(t *testing.T) {
 		says  string
 	}{
 		{nil, "number of atoms of 0"},
-		{[]Atom{{Symbol: "Xx"}}, `atom 1: outside the possible range: no mass is known for the symbol "Xx"; give its Mass`},
+		{[]Atom{{Symbol: "Xx"}}, `atom 1: outside the possible range: no mass is known for the symbol "Xx"; correct it, or give the mass of the atom`},
 		{[]Atom{{Symbol: "H", Mass: -1}}, "atom 1: mass (kg/mol) of -1"},
 		{[]Atom{{Symbol: "H"}, {Symbol: "H", Z: 0.74}}, "coordinate (m) of atom 2 of 0.74 is not possible; give metres"},
 		{[]Atom{{Symbol: "H"}, {Symbol: "H", Z: math.NaN()}}, "coordinate (m) of atom 2 of NaN"},

@@ -208,7 +208,7 @@ func (m *Molecule) checkModes(s shape) error {
 	fix := ""
 	switch kind := len(s.rotation); {
 	case kind == 0 && got != 0:
-		fix = "an atom has none; give Rotation or Atoms if this is a molecule"
+		fix = "an atom has none; give rotation or atoms if this is a molecule"
 	case kind == 1 && n > 0 && got != 3*n-5:
 		fix = fmt.Sprintf("%d atoms on one line have %d, equal ones repeated", n, 3*n-5)
 	case kind == 3 && n > 0 && got != 3*n-6:

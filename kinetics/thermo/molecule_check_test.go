@@ -52,10 +52,10 @@ func TestMoleculeCheck(t *testing.T) {
 		says   string
 	}{
 		{"E", func(m *Molecule) { m.E = nan }, "electronic energy (J/mol) of NaN"},
-		{"mass", func(m *Molecule) { m.Mass = 0 }, "mass (kg/mol) of 0 is not possible; give a finite one above zero, or Atoms"},
+		{"mass", func(m *Molecule) { m.Mass = 0 }, "mass (kg/mol) of 0 is not possible; give a finite one above zero, or atoms"},
 		{"two constants", func(m *Molecule) { m.Rotation = m.Rotation[:2] }, "number of rotational constants of 2"},
 		{"a constant of zero", func(m *Molecule) { m.Rotation[2] = 0 }, "rotational constant 3 (cm-1) of 0"},
-		{"no constants", func(m *Molecule) { m.Rotation, m.Symmetry = nil, 0 }, "number of frequencies of 3 is not possible; an atom has none; give Rotation or Atoms"},
+		{"no constants", func(m *Molecule) { m.Rotation, m.Symmetry = nil, 0 }, "number of frequencies of 3 is not possible; an atom has none; give rotation or atoms"},
 		{"an atom that turns", func(m *Molecule) { m.Rotation, m.Frequencies = nil, nil }, "symmetry number of an atom of 2"},
 		{"linear by mistake", func(m *Molecule) { m.Rotation = m.Rotation[:1] }, "3N − 5"},
 		{"a mode forgotten", func(m *Molecule) { m.Frequencies = m.Frequencies[1:] }, "number of frequencies of 2 is not possible; a molecule of N atoms that is not linear has 3N − 6"},

@@ -13,7 +13,7 @@ type part struct {
 }
 
 // The one table of units, in the order in which a product is written: energy,
-// amount per volume, volume, amount, length, mass, pressure, time, temperature.
+// amount per volume, volume, amount, mass, length, pressure, time, temperature.
 // Symbols, prefixes and their case follow the SI brochure; the words beside
 // them are common practice.
 var parts = []part{
@@ -45,6 +45,11 @@ var parts = []part{
 	{symbol: "mmol", dim: Amount, num: 1, den: 1e3},
 	{symbol: "µmol", dim: Amount, num: 1, den: 1e6, also: []string{"umol"}},
 
+	{symbol: "kg", dim: Mass, num: 1, den: 1},
+	{symbol: "g", dim: Mass, num: 1, den: 1e3},
+	{symbol: "mg", dim: Mass, num: 1, den: 1e6},
+	{symbol: "µg", dim: Mass, num: 1, den: 1e9, also: []string{"ug"}},
+
 	{symbol: "m", dim: Length, num: 1, den: 1},
 	{symbol: "dm", dim: Length, num: 1, den: 10},
 	{symbol: "cm", dim: Length, num: 1, den: 100},
@@ -54,10 +59,7 @@ var parts = []part{
 	{symbol: "pm", dim: Length, num: 1, den: 1e12},
 	{symbol: "Å", dim: Length, num: 1, den: 1e10, also: []string{"\u212b", "A\u030a", "angstrom"}},
 
-	{symbol: "kg", dim: Mass, num: 1, den: 1},
-	{symbol: "g", dim: Mass, num: 1, den: 1e3},
-	{symbol: "mg", dim: Mass, num: 1, den: 1e6},
-	{symbol: "µg", dim: Mass, num: 1, den: 1e9, also: []string{"ug"}},
+	{symbol: "u", dim: MolarMass, num: MassUnit * Avogadro, den: 1, also: []string{"Da"}},
 
 	{symbol: "bar", dim: Pressure, num: Bar, den: 1},
 	{symbol: "mbar", dim: Pressure, num: Bar, den: 1000},

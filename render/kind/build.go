@@ -19,16 +19,25 @@ import (
 type builder struct {
 	src      *mechanismSource
 	home     float64
+	low      thermo.LowModes
 	problems fault.Problems
 	energies map[string]given // by state, as far as read
 	twins    [][]string       // states with one energy and so one error; the first gives it
 	table    map[string]tableRow
-	names    []string // species in order
+	names    []string          // species in order
+	states   map[string][]int  // by name in the source: the states made of it
+	origin   map[string]origin // by name of a state: where it comes from, if its name is another there
+}
+
+// origin is the step of the source that one of several alike comes from.
+type origin struct {
+	step   string
+	number int // of the reaction, from 1
 }
 
 // build returns the mechanism, with every fault found on the way.
 func (s *mechanismSource) build(in Inputs) (*kinetics.Mechanism, fault.Problems) {
-	b := &builder{src: s, home: s.Temperature.SI, energies: map[string]given{}, table: map[string]tableRow{}}
+	b := &builder{src: s, home: s.Temperature.SI, energies: map[string]given{}, table: map[string]tableRow{}, states: map[string][]int{}, origin: map[string]origin{}}
 	species, steps := s.Species, s.Step
 	if s.Table != nil {
 		rows, problems := s.Table.read(in, s.Energies)
@@ -52,13 +61,27 @@ func (s *mechanismSource) build(in Inputs) (*kinetics.Mechanism, fault.Problems)
 	for _, sp := range species {
 		b.names = append(b.names, sp.Name)
 	}
+	low, bad := s.lowModes()
+	if bad != nil {
+		b.problems = append(b.problems, bad)
+	}
+	b.low = low
+	if f := s.Scale; f != nil && !(*f > 0) {
+		b.fault([]string{"frequency-scale"}, fmt.Sprintf("a factor of %g on frequencies makes no sense", *f), "give a number above 0, such as 0.97")
+	}
 	b.readEnergies(species, steps)
 	m := &kinetics.Mechanism{ID: s.ID, Title: s.Title, Method: s.Method, Temperature: b.home}
-	for _, sp := range species {
+	if v := s.Viscosity; v != nil {
+		if m.Viscosity = v.SI; !(m.Viscosity > 0) {
+			b.fault([]string{"viscosity"}, fmt.Sprintf("viscosity %s makes no sense", v), "give one above 0, such as \"0.6 mPa s\"")
+		}
+	}
+	for i, sp := range species {
 		m.Species = append(m.Species, b.species(sp))
+		b.states[sp.Name] = []int{i}
 	}
 	for _, st := range steps {
-		m.Steps = append(m.Steps, b.step(st))
+		b.steps(m, st)
 	}
 	b.sharing(m)
 	b.mirror(m)
@@ -77,7 +100,12 @@ func (s *mechanismSource) build(in Inputs) (*kinetics.Mechanism, fault.Problems)
 			b.refuse(err)
 			continue
 		}
-		b.diffusion(n, T)
+		if math.Abs(T.SI-b.home) > 1e-9*b.home { // those at home are told
+			for _, c := range n.Warnings {
+				b.complain(c)
+			}
+		}
+		b.diffusion(m, n, T)
 	}
 	return m, b.problems
 }
@@ -105,18 +133,34 @@ func (b *builder) complain(c kinetics.Complaint) {
 	if c.Fatal {
 		severity = fault.Error
 	}
-	var path []string
-	if c.State != "" {
-		path = []string{b.section(c.State), c.State}
-		if c.Key != "" {
-			path = append(path, c.Key)
-		}
+	path := b.path(c.State, c.Key)
+	if c.Fatal { // it says more than a warning at the same place
+		b.problems = slices.DeleteFunc(b.problems, func(p *fault.Problem) bool { return p.Severity == fault.Warning && slices.Equal(p.Path, path) })
 	}
 	p := &fault.Problem{Path: path, Severity: severity, Msg: c.Msg, Fix: c.Fix}
 	if row, ok := b.table[c.State]; ok && !b.written(c.State) {
 		p.File, p.Line, p.Col = b.src.Table.File, row.line, 1
 	}
 	b.problems = append(b.problems, p)
+}
+
+// path leads to a key of a state; nil, the block, if there is no state.
+func (b *builder) path(state, key string) []string {
+	var path []string
+	if o, ok := b.origin[state]; ok {
+		path = []string{"step", o.step}
+		if key == "reaction" {
+			return append(path, "reactions", fmt.Sprint(o.number))
+		}
+	} else if state != "" {
+		path = []string{b.section(state), state}
+	} else {
+		return nil
+	}
+	if key != "" {
+		path = append(path, key)
+	}
+	return path
 }
 
 // written tells whether a state stands in the block itself.
@@ -141,6 +185,7 @@ func (b *builder) refuse(err error) {
 func (b *builder) readEnergies(species []speciesSource, steps []stepSource) {
 	sameAs := map[string]string{}
 	path := map[string][]string{}
+	measured := slices.ContainsFunc(steps, func(s stepSource) bool { return len(s.rates()) > 0 })
 	one := func(section, name string, e energySource) {
 		p := []string{section, name}
 		path[name] = p
@@ -150,12 +195,14 @@ func (b *builder) readEnergies(species []speciesSource, steps []stepSource) {
 			b.fault(p, fmt.Sprintf("%q has an energy here and another in %q", name, b.src.Table.File), "keep one of them")
 		case tabled:
 			b.energies[name] = given{energy: thermo.Constant(row.energy)}
-		case e.SameAs != "" && (e.G != nil || e.H != nil || e.S != nil || len(e.Conformers) > 0):
+		case section == "species" && measured && e.none():
+			b.energies[name] = given{unknown: true}
+		case e.SameAs != "" && (!e.amountsSource.none() || len(e.Conformers) > 0):
 			b.fault(append(p, "same-as"), "same-as stands beside another energy", "keep one of them")
 		case e.SameAs != "":
 			sameAs[name] = e.SameAs
 		default:
-			g, bad := e.read(b.home, p)
+			g, bad := b.reader(e, section == "step").energy(e, p)
 			if bad != nil {
 				b.problems = append(b.problems, bad)
 			}
@@ -173,6 +220,18 @@ func (b *builder) readEnergies(species []speciesSource, steps []stepSource) {
 			}
 			path[st.Name] = p
 			b.energies[st.Name] = given{energy: thermo.Constant(st.Barrier.SI), sd: deviation(st.Barrier.SD)}
+			continue
+		}
+		if st.lawful() {
+			p := []string{"step", st.Name}
+			if key := st.rates()[0]; !st.none() {
+				b.fault(append(p, key), key+" stands beside an energy of the transition state", "keep one of them")
+			}
+			if _, tabled := b.table[st.Name]; tabled {
+				b.fault(p, fmt.Sprintf("%q has a rate here and an energy in %q", st.Name, b.src.Table.File), "keep one of them")
+			}
+			path[st.Name] = p
+			b.energies[st.Name] = given{}
 			continue
 		}
 		one("step", st.Name, st.energySource)
@@ -211,6 +270,15 @@ func (b *builder) readEnergies(species []speciesSource, steps []stepSource) {
 	}
 }
 
+// reader reads the energy of one state.
+func (b *builder) reader(e energySource, saddle bool) reader {
+	r := reader{home: b.home, saddle: saddle, standard: b.standard(e.Standard), low: b.low}
+	if b.src.Scale != nil && *b.src.Scale > 0 {
+		r.scale = *b.src.Scale
+	}
+	return r
+}
+
 func (b *builder) standard(own string) rate.Standard {
 	if own == "" {
 		own = b.src.Standard
@@ -229,112 +297,27 @@ func (b *builder) species(s speciesSource) kinetics.Species {
 		b.fault([]string{"species", s.Name, "forms"}, fmt.Sprintf("%d forms make no sense", s.Forms), "give 1 or more")
 	}
 	g := b.energies[s.Name]
-	sp := kinetics.Species{Name: s.Name, Label: s.Label, Source: s.Source, Energy: g.energy, Forms: s.Forms, Standard: b.standard(s.Standard), SD: g.sd, SDEntropy: g.sdEntropy}
-	if sp.SD == nil && sp.SDEntropy == nil && b.src.Error != nil && b.src.Error.Species != nil {
+	sp := kinetics.Species{Name: s.Name, Label: s.Label, Source: s.Source, Energy: g.energy, Unknown: g.unknown, Forms: s.Forms, Standard: b.standard(s.Standard), SD: g.sd, SDEntropy: g.sdEntropy}
+	if sp.SD == nil && sp.SDEntropy == nil && !sp.Unknown && b.src.Error != nil && b.src.Error.Species != nil {
 		sp.SD = deviation(b.src.Error.Species.SI)
 	}
-	if s.Formula != "" {
-		sp.Formula = s.Formula
-		_, err := kinetics.ParseFormula(s.Formula)
+	row, tabled := b.table[s.Name]
+	if tabled {
+		sp.Label, sp.Source = or(sp.Label, row.label), or(sp.Source, or(row.source, b.src.Table.File))
+	}
+	if sp.Formula = or(s.Formula, row.formula); sp.Formula != "" {
+		_, err := kinetics.ParseFormula(sp.Formula)
 		var bad *kinetics.FormulaError
 		if errors.As(err, &bad) {
 			p := problem([]string{"species", s.Name, "formula"}, bad.Msg, bad.Fix)
 			p.Char = bad.At
+			if s.Formula == "" {
+				p.File, p.Line, p.Col = b.src.Table.File, row.line, row.formulaCol+bad.At
+			}
 			b.problems = append(b.problems, p)
 		}
 	}
-	if row, ok := b.table[s.Name]; ok {
-		sp.Label, sp.Source = or(sp.Label, row.label), or(sp.Source, or(row.source, b.src.Table.File))
-	}
 	return sp
-}
-
-func (b *builder) step(s stepSource) kinetics.Step {
-	g := b.energies[s.Name]
-	st := kinetics.Step{Name: s.Name, Label: s.Label, Source: s.Source, Energy: g.energy, Above: s.Barrier != nil,
-		Degeneracy: 1, Transmission: 1, Standard: b.standard(s.Standard), SD: g.sd, SDEntropy: g.sdEntropy}
-	if st.SD == nil && st.SDEntropy == nil && b.src.Error != nil && b.src.Error.Step != nil {
-		st.SD = deviation(b.src.Error.Step.SI)
-	}
-	row, tabled := b.table[s.Name]
-	if tabled {
-		st.Label, st.Source = or(st.Label, row.label), or(st.Source, or(row.source, b.src.Table.File))
-	}
-	path := []string{"step", s.Name}
-	for key, given := range map[string]*float64{"degeneracy": s.Degeneracy, "transmission": s.Transmission} {
-		if given == nil {
-			continue
-		}
-		if !(*given > 0) || math.IsInf(*given, 0) {
-			b.fault(append(path, key), fmt.Sprintf("%s %g makes no sense", key, *given), "give a number above 0")
-			continue
-		}
-		if key == "degeneracy" {
-			st.Degeneracy = *given
-		} else {
-			st.Transmission = *given
-		}
-	}
-	reaction := s.Reaction
-	if tabled && reaction == "" {
-		reaction = row.reaction
-	}
-	if reaction == "" {
-		b.fault(path, fmt.Sprintf("step %q has no reaction", s.Name), "add reaction = \"A <=> B\"")
-		return st
-	}
-	from, to, returns, err := kinetics.ParseReaction(reaction, b.names)
-	if err != nil {
-		p := sumProblem(append(path, "reaction"), err, b.names)
-		p.Fix = strings.Replace(p.Fix, "a sum such as \"R + X\"", "a reaction such as \"R + X <=> A\"", 1)
-		if tabled && s.Reaction == "" {
-			p.File, p.Line, p.Col = b.src.Table.File, row.line, row.reactionCol
-		}
-		b.problems = append(b.problems, p)
-		return st
-	}
-	st.From, st.To, st.Returns = from, to, returns
-	return st
-}
-
-// sharing joins the errors that states have in common.
-func (b *builder) sharing(m *kinetics.Mechanism) {
-	index := map[string]int{}
-	for i, n := range m.States() {
-		if _, twice := index[n]; twice {
-			b.fault([]string{"step", n}, fmt.Sprintf("%q is a species and a step", n), "rename one of them")
-		}
-		index[n] = i
-	}
-	b.shareTwins(m, index)
-	for i, sh := range b.src.Shared {
-		c := kinetics.Common{SD: sh.SD.SI}
-		for j, name := range sh.Of {
-			k, ok := index[name]
-			if !ok {
-				b.fault([]string{"shared", fmt.Sprint(i + 1), "of", fmt.Sprint(j + 1)}, fmt.Sprintf("%q is not a state of this mechanism", name), suggest(name, m.States()))
-				continue
-			}
-			c.States = append(c.States, k)
-		}
-		m.Common = append(m.Common, c)
-		m.SharingStated = true
-	}
-	if e := b.src.Error; e != nil {
-		all := func(sd *unit.Quantity, from, to int) {
-			if sd == nil {
-				return
-			}
-			c := kinetics.Common{SD: sd.SI}
-			for k := from; k < to; k++ {
-				c.States = append(c.States, k)
-			}
-			m.Common = append(m.Common, c)
-			m.SharingStated = true
-		}
-		all(e.SharedSpecies, 0, len(m.Species))
-		all(e.SharedStep, len(m.Species), len(m.Species)+len(m.Steps))
-	}
 }
 
 func (s *mechanismSource) temperatures() []unit.Quantity {

@@ -11,15 +11,14 @@ import (
 	"saddlebook/kinetics"
 	"saddlebook/kinetics/rate"
 	"saddlebook/kinetics/unit"
-	"saddlebook/render/paper"
 )
 
 func init() {
 	Register(Kind[mechanismSource, mechanismValue]{
 		Name:    "mechanism",
 		Doc:     "Species and steps under one id, with the free energies that say which way and how fast.",
-		Method:  "Rate constants by the Eyring equation with the exact constants of 2019; equilibrium constants from the free energies, so that every reversible step obeys detailed balance; positions by the Marcus relation.",
-		Version: 1,
+		Method:  "Rate constants by the Eyring equation with the exact constants of 2019, or as the author states them; equilibrium constants from the free energies or as stated, so that every reversible step and every cycle obeys detailed balance; positions by the Marcus relation.",
+		Version: 2,
 		Fields:  mechanismFields,
 		ID:      func(s *mechanismSource) string { return s.ID },
 		Files: func(s *mechanismSource) []string {
@@ -52,6 +51,11 @@ func init() {
 			{"equilibrium-constant/STEP@T", "forward over back rate constant"},
 			{"half-life/STEP@T", "half-life of the reactant; for more than one molecule, with the others at half-life-at"},
 			{"half-life-back/STEP@T", "the same for the return"},
+			{"tunnelling/STEP@T", "factor of tunnelling within the rate constants, where the step counts it"},
+			{"diffusion-factor/STEP@T", "what diffusion leaves of the rate constants, where the step is limited by it"},
+			{"zero-point/STATE@T", "energy of the zero point, of a state given by E and frequencies"},
+			{"enthalpy/STATE@T", "its enthalpy: E, zero point and thermal part"},
+			{"entropy/STATE@T", "its entropy at its standard state"},
 			{"position/STEP@T", "position of the transition state between reactants (0) and products (1)"},
 			{"character/STEP@T", "early, central or late"},
 			{"racemisation/STEP@T", "rate constant of racemisation of a step between enantiomers: twice its rate constant"},
@@ -86,6 +90,8 @@ type mechanismSource struct {
 	HalfLifeAt  *unit.Quantity  `key:"half-life-at"`
 	Enantiomers []string        `key:"enantiomers"`
 	Viscosity   *unit.Quantity  `key:"viscosity"`
+	LowModes    *lowModesSource `key:"low-modes"`
+	Scale       *float64        `key:"frequency-scale"`
 	Error       *errorSource    `key:"error"`
 	Shared      []sharedSource  `key:"shared"`
 	Table       *tableSource    `key:"table"`
@@ -115,32 +121,29 @@ var mechanismFields = []schema.Field{
 	{Key: "method", Doc: "where the energies come from, printed as provenance", Type: schema.Text, Example: "functional/basis, solvent model"},
 	{Key: "half-life-at", Doc: "the concentration of the other molecules for half-lives of steps of more than one", Type: schema.Amount, Dims: []unit.Dim{unit.Concentration}, Default: "1 M", Example: "0.2 M"},
 	{Key: "enantiomers", Doc: "two species that mirror each other; a step between them racemises", Type: schema.Words, Wants: "species", Example: `["R", "S"]`},
-	{Key: "viscosity", Doc: "of the solvent, for the diffusion limit that steps of two molecules are held against", Type: schema.Amount, Dims: []unit.Dim{unit.Viscosity}, Default: "1 mPa s", Example: "0.6 mPa s"},
+	{Key: "viscosity", Doc: "of the solvent, for the diffusion limit", Type: schema.Amount, Dims: []unit.Dim{unit.Viscosity}, Default: "1 mPa s", Example: "0.6 mPa s"},
+	lowModesField,
+	{Key: "frequency-scale", Doc: "factor on the frequencies of every state", Type: schema.Real, Default: "1", Example: "0.97"},
 	{Key: "error", Doc: "standard deviations where a state gives none of its own", Type: schema.Table, Fields: []schema.Field{
 		{Key: "species", Doc: "own error of each species", Type: schema.Amount, Dims: []unit.Dim{unit.MolarEnergy}, Bare: "@energies", Example: "0.5 kcal/mol"},
-		{Key: "step", Doc: "own error of each transition state", Type: schema.Amount, Dims: []unit.Dim{unit.MolarEnergy}, Bare: "@energies", Example: "0.8 kcal/mol"},
+		{Key: "step", Doc: "own error of each transition state, not of a stated rate", Type: schema.Amount, Dims: []unit.Dim{unit.MolarEnergy}, Bare: "@energies", Example: "0.8 kcal/mol"},
 		{Key: "shared-species", Doc: "error that all species have in common", Type: schema.Amount, Dims: []unit.Dim{unit.MolarEnergy}, Bare: "@energies", Example: "1 kcal/mol"},
-		{Key: "shared-step", Doc: "error that all transition states have in common", Type: schema.Amount, Dims: []unit.Dim{unit.MolarEnergy}, Bare: "@energies", Example: "1.5 kcal/mol"},
+		{Key: "shared-step", Doc: "error that all transition states have in common, stated rates apart", Type: schema.Amount, Dims: []unit.Dim{unit.MolarEnergy}, Bare: "@energies", Example: "1.5 kcal/mol"},
 	}},
 	{Key: "shared", Doc: "errors that the named states have in common", Type: schema.Tables, Fields: []schema.Field{
 		{Key: "of", Doc: "species and steps", Type: schema.Words, Required: true, Wants: "state", Example: `["TSa", "TSb"]`},
 		{Key: "sd", Doc: "the common standard deviation", Type: schema.Amount, Dims: []unit.Dim{unit.MolarEnergy}, Bare: "@energies", Required: true, Example: "2 kcal/mol"},
 	}},
-	{Key: "table", Doc: "a CSV file beside the note with a row for each state: columns name, optional reaction, label and source, and the columns to add up", Type: schema.Table, Fields: []schema.Field{
+	{Key: "table", Doc: "a CSV file beside the note with a row for each state: columns name, optional reaction, label, source and formula, and the columns to add up", Type: schema.Table, Fields: []schema.Field{
 		{Key: "file", Doc: "the file", Type: schema.Text, Required: true, Example: "energies.csv"},
 		{Key: "sum", Doc: "the columns whose sum is G", Type: schema.Words, Required: true, Example: `["E", "Gcorr", "Gsolv"]`},
 		{Key: "unit", Doc: "the unit of these columns", Type: schema.Text, OneOf: []string{"kcal/mol", "kJ/mol", "eV", "Eh", "cm-1"}, Default: "the unit of bare energies"},
 	}},
-	{Key: "species", Doc: "the minima, by name", Type: schema.Named, Fields: append(energyFields(), []schema.Field{
+	{Key: "species", Doc: "the minima, by name; one without an energy follows from the constants that steps state", Type: schema.Named, Fields: append(energyFields(), []schema.Field{
 		{Key: "forms", Doc: "how many indistinct forms the species stands for (2 for a racemate): G - RT ln n", Type: schema.Whole, Default: "1"},
 		{Key: "formula", Doc: "composition and charge; with it every step must balance", Type: schema.Text, Example: "C6H10O"},
 	}...)},
-	{Key: "step", Doc: "the elementary steps, by the name of their transition state", Type: schema.Named, Fields: append([]schema.Field{
-		{Key: "reaction", Doc: "what goes to what; <=> is reversible, -> has no return", Type: schema.Text, Example: "R + X <=> A"},
-		{Key: "barrier", Doc: "free energy of activation above the reactants, in place of an energy", Type: schema.Amount, Dims: []unit.Dim{unit.MolarEnergy}, Bare: "@energies", Example: "22.4"},
-		{Key: "degeneracy", Doc: "number of equivalent paths, in both directions", Type: schema.Real, Default: "1", Example: "2"},
-		{Key: "transmission", Doc: "transmission coefficient, in both directions", Type: schema.Real, Default: "1"},
-	}, energyFields()...)},
+	{Key: "step", Doc: "the elementary steps, by the name of their transition state", Type: schema.Named, Fields: stepFields()},
 }
 
 // mechanismValue is what a mechanism block computes: the model for other
@@ -150,17 +153,22 @@ type mechanismValue struct {
 	Steps [][]stepValue // by temperature, by step
 	Held  [][]string    // by temperature, by step: what was held constant, and its price; "" if nothing
 	Exact []string      // states without an error of their own, when others have one
+	// Molecules is the thermochemistry of the states given by E and frequencies,
+	// by temperature.
+	Molecules [][]moleculeValue
 }
 
 // Mechanism gives the model to the blocks that name this one.
 func (v mechanismValue) Mechanism() *kinetics.Mechanism { return v.Model }
 
 type stepValue struct {
-	Barrier, BarrierBack, Reaction   float64 // J/mol
-	LnK                              float64 // K itself may be beyond a float64
+	Barrier                          float64  // J/mol
+	BarrierBack, Reaction            *float64 // J/mol; nil: not known
+	LnK                              *float64 // K itself may be beyond a float64; nil: not known
 	Rate, RateBack                   float64
 	HalfLife, HalfLifeBack           float64  // s; 0: none; below 0: longer than any time
 	Position                         *float64 // nil: no barrier either way
+	Tunnelling, Limit                float64  // factors within the rates, 1 where none is counted
 	Molecules, MoleculesBack, Change int
 }
 
@@ -178,17 +186,14 @@ func (s *mechanismSource) tabulate(m *kinetics.Mechanism) (mechanismValue, error
 		}
 		var rows []stepValue
 		for _, r := range n.Reactions {
-			row := stepValue{Barrier: r.Barrier, BarrierBack: r.BarrierBack, Reaction: r.DeltaG, LnK: -r.DeltaG / (rate.R * T.SI), Rate: finite(r.Forward), RateBack: finite(r.Back),
-				Molecules: kinetics.Molecules(r.From), MoleculesBack: kinetics.Molecules(r.To)}
+			row := stepValue{Barrier: r.Barrier, BarrierBack: number(r.BarrierBack), Reaction: number(r.DeltaG), LnK: number(-r.DeltaG / (rate.R * T.SI)), Rate: finite(r.Forward), RateBack: finite(r.Back),
+				Tunnelling: r.Tunnelling, Limit: r.LimitFactor, Molecules: kinetics.Molecules(r.From), MoleculesBack: kinetics.Molecules(r.To)}
 			row.Change = row.MoleculesBack - row.Molecules
 			row.HalfLife = stored(r.HalfLife(false, others))
 			if r.Returns {
 				row.HalfLifeBack = stored(r.HalfLife(true, others))
 			}
-			if !math.IsNaN(r.Position) {
-				chi := r.Position
-				row.Position = &chi
-			}
+			row.Position = number(r.Position)
 			rows = append(rows, row)
 		}
 		v.Steps = append(v.Steps, rows)
@@ -197,6 +202,7 @@ func (s *mechanismSource) tabulate(m *kinetics.Mechanism) (mechanismValue, error
 			held[j] = m.HeldStep(j, T.SI)
 		}
 		v.Held = append(v.Held, held)
+		v.Molecules = append(v.Molecules, contributions(m, T.SI))
 	}
 	if m.HasErrors() {
 		v.Exact = m.ExactStates()
@@ -214,25 +220,31 @@ func (s *mechanismSource) results(v mechanismValue) []Result {
 			key := func(quantity string) Key {
 				return Key{ID: s.ID, Quantity: quantity, Item: st.Name, Condition: condition}
 			}
-			var assumes []string
+			assumes := lawAssumes(st)
 			if h := v.Held[i][j]; h != "" {
-				assumes = []string{h}
+				assumes = append(assumes, h)
 			}
 			add := func(quantity string, x float64, u unit.Unit, f unit.Form, more ...string) {
 				out = append(out, Result{Key: key(quantity), Value: Value(x, beyond(x)), Unit: u, Form: f, Assumes: append(assumes[:len(assumes):len(assumes)], more...)})
 			}
 			add("barrier", row.Barrier, energy, unit.FormEnergy)
 			if st.Returns {
-				add("barrier-back", row.BarrierBack, energy, unit.FormEnergy)
+				add("barrier-back", told(row.BarrierBack), energy, unit.FormEnergy)
 			}
-			add("reaction-energy", row.Reaction, energy, unit.FormEnergy)
+			add("reaction-energy", told(row.Reaction), energy, unit.FormEnergy)
 			add("rate", row.Rate, rateUnit(row.Molecules), unit.FormRate)
 			if st.Returns {
 				add("rate-back", row.RateBack, rateUnit(row.MoleculesBack), unit.FormRate)
-				add("equilibrium-constant", math.Exp(row.LnK), constantUnit(row.Change), unit.FormConstant)
+				add("equilibrium-constant", math.Exp(told(row.LnK)), constantUnit(row.Change), unit.FormConstant)
+			}
+			if st.Tunnelling != nil {
+				add("tunnelling", row.Tunnelling, plain, unit.FormFactor)
+			}
+			if st.Limited {
+				add("diffusion-factor", row.Limit, plain, unit.FormFactor)
 			}
 			if row.HalfLife != 0 {
-				add("half-life", told(row.HalfLife), seconds, unit.FormSpan, s.halfLifeNote(row.Molecules)...)
+				add("half-life", lifetime(row.HalfLife), seconds, unit.FormSpan, s.halfLifeNote(row.Molecules)...)
 			}
 			if s.racemises(v.Model, st) {
 				note := "racemisation is twice as fast as the exchange of the enantiomers, since each exchange undoes two molecules' worth of ee"
@@ -241,26 +253,40 @@ func (s *mechanismSource) results(v mechanismValue) []Result {
 				add("ee-loss", -math.Log(0.99)/(2*row.Rate), seconds, unit.FormSpan, note)
 			}
 			if row.HalfLifeBack != 0 {
-				add("half-life-back", told(row.HalfLifeBack), seconds, unit.FormSpan, s.halfLifeNote(row.MoleculesBack)...)
+				add("half-life-back", lifetime(row.HalfLifeBack), seconds, unit.FormSpan, s.halfLifeNote(row.MoleculesBack)...)
 			}
 			var note []string
 			if row.Change != 0 {
 				note = []string{"the number of molecules changes in this step, so its position depends on the standard state of 1 M"}
 			}
-			chi := math.NaN()
-			word := "none"
-			if row.Position != nil {
-				chi = *row.Position
-				word = rate.PositionWord(chi)
+			word, none := rate.PositionWord(told(row.Position)), "none"
+			if row.Reaction == nil {
+				word, none = "not known", "not known"
 			}
-			add("position", chi, plain, unit.FormPosition, note...)
-			out = append(out, Result{Key: key("character"), Value: Number{Kind: Words, Text: word}, Assumes: append(assumes[:len(assumes):len(assumes)], note...)})
+			chi := Result{Key: key("position"), Value: Value(told(row.Position), none), Unit: plain, Form: unit.FormPosition, Assumes: append(assumes[:len(assumes):len(assumes)], note...)}
+			out = append(out, chi, Result{Key: key("character"), Value: Number{Kind: Words, Text: word}, Assumes: chi.Assumes})
 		}
+		out = append(out, s.moleculeResults(v, i, T)...)
 	}
 	return out
 }
 
-// stored keeps a half-life in a form that JSON can hold; told takes it back.
+// number keeps a NaN out of JSON; told takes it back.
+func number(x float64) *float64 {
+	if math.IsNaN(x) || math.IsInf(x, 0) {
+		return nil
+	}
+	return &x
+}
+
+func told(x *float64) float64 {
+	if x == nil {
+		return math.NaN()
+	}
+	return *x
+}
+
+// stored keeps a half-life in a form that JSON can hold; lifetime takes it back.
 func stored(life float64) float64 {
 	if math.IsInf(life, 0) || math.IsNaN(life) {
 		return -1
@@ -268,7 +294,7 @@ func stored(life float64) float64 {
 	return life
 }
 
-func told(life float64) float64 {
+func lifetime(life float64) float64 {
 	if life < 0 {
 		return math.Inf(1)
 	}
@@ -283,7 +309,7 @@ func beyond(x float64) string {
 	if math.IsInf(x, 0) {
 		return "beyond any number"
 	}
-	return "none"
+	return "not known"
 }
 
 // racemises tells whether a step turns one enantiomer into the other.
@@ -335,100 +361,4 @@ func asProblems(err error, section string) error {
 		ps = append(ps, p)
 	}
 	return ps
-}
-
-// present shows the steps, a table for each temperature.
-func (s *mechanismSource) present(v mechanismValue, sheet *paper.Sheet) {
-	m := v.Model
-	energy := or(s.Energies, "kcal/mol")
-	beside := "kJ/mol"
-	if energy == "kJ/mol" {
-		beside = "kcal/mol"
-	}
-	var sure []string
-	for i, T := range s.temperatures() {
-		cond := ConditionText(T)
-		t := paper.Table{
-			Caption: fmt.Sprintf("%s at %s", or(m.Title, "Steps"), unit.Print(T.SI, T.Unit, unit.FormPlain)),
-			Columns: []paper.Column{
-				{Head: "Step"}, {Head: "Reaction"},
-				{Head: "ΔG‡", Unit: energy, Number: true}, {Head: "ΔG‡ back", Unit: energy, Number: true}, {Head: "ΔG", Unit: energy, Number: true},
-				{Head: "k", Number: true}, {Head: "K", Number: true}, {Head: s.halfLifeHead(v), Number: true}, {Head: "χ", Number: true},
-			},
-		}
-		for j, st := range m.Steps {
-			row := v.Steps[i][j]
-			key := func(quantity string) string { return quantity + "/" + st.Name + "@" + cond }
-			value := func(quantity string, present bool) paper.Cell {
-				if !present {
-					return paper.Text("–")
-				}
-				return sheet.Value(key(quantity))
-			}
-			energyCell := func(quantity string, x float64, present bool) paper.Cell {
-				c := value(quantity, present)
-				if present {
-					c.Text = sheet.Bare(key(quantity)).Text
-					c.Beside = unit.Print(x, unit.Must(beside, unit.MolarEnergy), unit.FormEnergy)
-				}
-				return c
-			}
-			name := paper.Text(or(st.Label, st.Name))
-			name.Flags = stepFlags(st)
-			life := value("half-life", row.HalfLife != 0)
-			if row.HalfLifeBack != 0 {
-				life.Beside = "back " + sheet.Value(key("half-life-back")).Text
-			}
-			chi := sheet.Value(key("position"))
-			chi.Beside = sheet.Value(key("character")).Text
-			t.Rows = append(t.Rows, []paper.Cell{
-				name, paper.Text(reactionText(m, st)),
-				energyCell("barrier", row.Barrier, true), energyCell("barrier-back", row.BarrierBack, st.Returns), energyCell("reaction-energy", row.Reaction, true),
-				value("rate", true), value("equilibrium-constant", st.Returns), life, chi,
-			})
-		}
-		sheet.Table(t)
-		for _, st := range m.Steps {
-			at := "/" + st.Name + "@" + cond
-			sure = append(sure, "barrier"+at, "rate"+at)
-		}
-		for j, st := range m.Steps {
-			if v.Steps[i][j].HalfLife != 0 {
-				sure = append(sure, "half-life/"+st.Name+"@"+cond)
-			}
-			if s.racemises(m, st) {
-				sure = append(sure, "ee-loss/"+st.Name+"@"+cond)
-			}
-		}
-		for _, h := range v.Held[i] {
-			if h != "" {
-				sheet.Assumption(h)
-			}
-		}
-	}
-	presentRacemisation(s, v, sheet)
-	sheet.Given(s.energyTable(v))
-	sheet.Intervals(sure...)
-	sheet.Method("Rate constants: Eyring equation with the exact constants of 2019; equilibrium constants from the free energies, so that each reversible step obeys detailed balance. Position: the Marcus relation χ = √f / (√f + √b) of the forward and back barriers f and b; early below 0.45, late above 0.55.")
-	sheet.Assumption("Transmission coefficients and path degeneracies are 1 unless the block says otherwise; they act in both directions.")
-	sheet.Assumption(s.standardWords())
-	several, change := false, false
-	for _, row := range v.Steps[0] {
-		several = several || row.Molecules > 1 || row.MoleculesBack > 1
-		change = change || row.Change != 0
-	}
-	sheet.Assumption("Half-lives are those of the one direction alone, as if nothing came back.")
-	if several {
-		sheet.Assumption(fmt.Sprintf("The half-life of a step of more than one molecule is that of the first reactant that is used up, with all others held at %s; where several molecules of it react, from that concentration to half of it.", s.others()))
-	}
-	if change {
-		sheet.Assumption("Where the number of molecules changes in a step, the position of its transition state depends on the standard state of 1 M.")
-	}
-	if m.Method != "" {
-		sheet.Method("Energies: " + m.Method)
-	}
-	for _, src := range sources(m) {
-		sheet.Method(src)
-	}
-	describeErrors(v, sheet)
 }

@@ -6,32 +6,29 @@ import (
 
 	"saddlebook/content/fault"
 	"saddlebook/kinetics"
-	"saddlebook/kinetics/rate"
 	"saddlebook/kinetics/unit"
 )
 
 // diffusion holds every step of two molecules against the rate at which they
 // meet (Smoluchowski, 8RT/3η).
-func (b *builder) diffusion(n *kinetics.Network, T unit.Quantity) {
-	eta := 1e-3
-	if v := b.src.Viscosity; v != nil {
-		if eta = v.SI; !(eta > 0) {
-			b.fault([]string{"viscosity"}, fmt.Sprintf("viscosity %s makes no sense", v), "give one above 0, such as \"0.6 mPa s\"")
-			return
-		}
+func (b *builder) diffusion(m *kinetics.Mechanism, n *kinetics.Network, T unit.Quantity) {
+	most := m.DiffusionLimit(T.SI)
+	eta := unit.Quantity{SI: 1e-3}
+	if b.src.Viscosity != nil {
+		eta = *b.src.Viscosity
 	}
-	most := rate.Diffusion(T.SI, eta)
 	say := func(step, way string, k float64) {
-		b.problems = append(b.problems, &fault.Problem{Path: []string{b.section(step), step}, Severity: fault.Warning,
+		b.problems = append(b.problems, &fault.Problem{Path: b.path(step, ""), Severity: fault.Warning,
 			Msg: fmt.Sprintf("the rate constant of step %s %sat %s, %s, is above the diffusion limit of %s (viscosity %s mPa s)", step, way, T,
-				unit.Print(k, rateUnit(2), unit.FormRate), unit.Print(most, rateUnit(2), unit.FormRate), unit.Digits(eta*1000, 2)),
-			Fix: "raise the transition state to what diffusion allows, or state the viscosity of the solvent"})
+				unit.Print(k, rateUnit(2), unit.FormRate), unit.Print(most, rateUnit(2), unit.FormRate), unit.Digits(eta.SI*1000, 2)),
+			Fix: "raise the transition state to what diffusion allows, write limit = \"diffusion\", or state the viscosity of the solvent"})
 	}
+	const above = 1 + 1e-9 // of rounding
 	for _, r := range n.Reactions {
-		if kinetics.Molecules(r.From) == 2 && r.Forward > most {
+		if kinetics.Molecules(r.From) == 2 && r.Forward > most*above {
 			say(r.Name, "", r.Forward)
 		}
-		if r.Returns && kinetics.Molecules(r.To) == 2 && r.Back > most {
+		if r.Returns && kinetics.Molecules(r.To) == 2 && r.Back > most*above {
 			say(r.Name, "back ", r.Back)
 		}
 	}
@@ -60,7 +57,7 @@ func (b *builder) mirror(m *kinetics.Mechanism) {
 		return
 	}
 	for _, T := range append(b.src.temperatures(), b.src.Temperature) {
-		if x, y := pair[0].Energy.At(T.SI), pair[1].Energy.At(T.SI); math.Abs(x-y) > 1e-6 {
+		if x, y := pair[0].Energy.At(T.SI), pair[1].Energy.At(T.SI); pair[0].Unknown != pair[1].Unknown || math.Abs(x-y) > 1e-6 {
 			b.fault([]string{"enantiomers"}, fmt.Sprintf("%q and %q have different energies, and enantiomers have the same", names[0], names[1]), fmt.Sprintf("write %s = { same-as = %q }", names[1], names[0]))
 			return
 		}

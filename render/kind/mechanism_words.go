@@ -140,21 +140,6 @@ func (s *mechanismSource) halfLifeHead(v mechanismValue) string {
 	return "Half-life"
 }
 
-// stepFlags are the marks of a step whose rate is not that of its barrier alone.
-func stepFlags(st kinetics.Step) []string {
-	var flags []string
-	if !st.Returns {
-		flags = append(flags, "no return")
-	}
-	if st.Degeneracy != 1 {
-		flags = append(flags, "degeneracy "+unit.Digits(st.Degeneracy, 2))
-	}
-	if st.Transmission != 1 {
-		flags = append(flags, "transmission "+unit.Digits(st.Transmission, 2))
-	}
-	return flags
-}
-
 // energyTable lists every state with its energy as given: the key from names
 // to labels, and what the page can be held to.
 func (s *mechanismSource) energyTable(v mechanismValue) paper.Table {
@@ -164,23 +149,29 @@ func (s *mechanismSource) energyTable(v mechanismValue) paper.Table {
 		t.Rows = append(t.Rows, []paper.Cell{paper.Text(name), paper.Text(or(label, "–")), paper.Text(energy), paper.Text(or(strings.Join(remarks, "; "), "–"))})
 	}
 	inBlock := map[string]energySource{}
-	barrier := map[string]*unit.Quantity{}
+	rates := map[string]stepSource{}
 	for _, sp := range s.Species {
 		inBlock[sp.Name] = sp.energySource
 	}
 	for _, st := range s.Step {
 		inBlock[st.Name] = st.energySource
-		barrier[st.Name] = st.Barrier
+		rates[st.Name] = st
+		for i := range st.Reactions {
+			inBlock[kinetics.AlikeName(st.Name, i+1)] = st.energySource
+			rates[kinetics.AlikeName(st.Name, i+1)] = st
+		}
 	}
-	given := func(name string, tabled thermo.Energy) (string, []string) {
+	given := func(name string, tabled thermo.Energy, unknown bool) (string, []string) {
 		e, written := inBlock[name]
 		var remarks []string
 		if e.Standard != "" {
 			remarks = append(remarks, "at "+e.Standard)
 		}
 		switch {
-		case barrier[name] != nil:
-			return "barrier " + barrier[name].String(), remarks
+		case len(rates[name].rates()) > 0:
+			return rates[name].words(), remarks
+		case unknown:
+			return "none", append(remarks, "follows from the constants that steps state, as far as it does")
 		case !written || e.none():
 			g := unit.Print(tabled.At(v.Model.Temperature), unit.Must(or(s.Energies, "kcal/mol"), unit.MolarEnergy), unit.FormEnergy)
 			return "G " + g, append(remarks, "sum of "+listWords(s.Table.Sum)+" in "+s.Table.File)
@@ -188,14 +179,14 @@ func (s *mechanismSource) energyTable(v mechanismValue) paper.Table {
 		return e.words(), remarks
 	}
 	for _, sp := range v.Model.Species {
-		text, remarks := given(sp.Name, sp.Energy)
+		text, remarks := given(sp.Name, sp.Energy, sp.Unknown)
 		if sp.Forms > 1 {
 			remarks = append(remarks, fmt.Sprintf("stands for %d forms", sp.Forms))
 		}
 		row(sp.Name, sp.Label, text, append(remarks, fromDefaults(text, sp.SD)...))
 	}
 	for _, st := range v.Model.Steps {
-		text, remarks := given(st.Name, st.Energy)
+		text, remarks := given(st.Name, st.Energy, false)
 		row(st.Name, st.Label, text, append(remarks, fromDefaults(text, st.SD)...))
 	}
 	return t
@@ -213,21 +204,49 @@ func (e energySource) words() string {
 		}
 		return "conformers: " + strings.Join(parts, "; ")
 	}
-	return conformerSource{e.G, e.H, e.S, e.Cp}.words()
+	return e.amountsSource.words()
 }
 
-func (c conformerSource) words() string {
-	var parts []string
-	for _, p := range []struct {
-		name string
-		q    *unit.Quantity
-	}{{"G", c.G}, {"H", c.H}, {"S", c.S}, {"Cp", c.Cp}} {
-		if p.q != nil {
-			parts = append(parts, p.name+" "+strings.ReplaceAll(p.q.String(), "-", "−"))
+func (c amountsSource) words() string {
+	parts := quantityWords([]named{{"G", c.G}, {"H", c.H}, {"S", c.S}, {"Cp", c.Cp}, {"E", c.E}})
+	switch n := len(c.Frequencies); {
+	case n == 1:
+		parts = append(parts, "1 frequency")
+	case n > 1:
+		parts = append(parts, fmt.Sprintf("%d frequencies", n))
+	}
+	for _, w := range []struct {
+		word string
+		n    *int
+	}{{"symmetry number", c.Symmetry}, {"multiplicity", c.Multiplicity}} {
+		if w.n != nil {
+			parts = append(parts, fmt.Sprintf("%s %d", w.word, *w.n))
 		}
+	}
+	if c.Scale != nil {
+		parts = append(parts, fmt.Sprintf("frequencies × %g", *c.Scale))
 	}
 	return strings.Join(parts, ", ")
 }
+
+// named is a quantity as its author wrote it, under its key.
+type named struct {
+	name string
+	q    *unit.Quantity
+}
+
+func quantityWords(list []named) []string {
+	var parts []string
+	for _, p := range list {
+		if p.q != nil {
+			parts = append(parts, minus.Replace(p.name+" "+p.q.String()))
+		}
+	}
+	return parts
+}
+
+// minus sets the minus of numbers, and leaves that of powers of units.
+var minus = strings.NewReplacer(" -", " −")
 
 // fromDefaults tells the error that a state has from the defaults of the
 // mechanism, since its energy as given shows none.

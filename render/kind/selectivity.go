@@ -121,13 +121,28 @@ func (s *selectivitySource) limits(m *kinetics.Mechanism) (selectivityValue, err
 		row.Kinetic = shareOut(groups, products, lim.Shares)
 		row.PreEquilibrium = shareOut(groups, products, lim.PreEquilibrium)
 		row.NoExchange = lim.NoExchange
-		row.Equilibrium, row.WhyNot, err = equilibriumShares(n, groups, products, held, len(s.Charge) > 0)
+		shares, why, err := n.EquilibriumShares(products, s.start(held))
 		if err != nil {
 			return v, asProblems(err, "")
 		}
+		row.Equilibrium, row.WhyNot = shareOut(groups, products, shares), why
 		v.At = append(v.At, row)
 	}
 	return v, nil
+}
+
+// start is what is there at the start, for an equilibrium; nil: no charge is stated.
+func (s *selectivitySource) start(held []float64) []float64 {
+	if len(s.Charge) == 0 {
+		return nil
+	}
+	start := make([]float64, len(held))
+	for i, c := range held {
+		if !math.IsNaN(c) {
+			start[i] = c
+		}
+	}
+	return start
 }
 
 // shareOut sums values over groups and divides by the total. It is nil when
@@ -154,60 +169,6 @@ func shareOut(groups [][]int, products []int, values []float64) []float64 {
 		out[g] /= total
 	}
 	return out
-}
-
-// equilibriumShares compares the products at equilibrium, without a charge
-// where their ratio does not depend on one.
-func equilibriumShares(n *kinetics.Network, groups [][]int, products []int, held []float64, charged bool) ([]float64, string, error) {
-	for _, p := range products {
-		if n.Drained(p) {
-			return nil, "equilibrium is not reachable: a step without return drains " + n.Names[p], nil
-		}
-	}
-	values := make([]float64, len(products))
-	free := true
-	for i, p := range products {
-		r, ok := n.EquilibriumRatio(p, products[0])
-		free = free && ok
-		values[i] = r
-	}
-	if free {
-		return shareOut(groups, products, values), "", nil
-	}
-	for _, r := range n.Reactions {
-		for _, p := range products {
-			if !r.Returns && makes(r, p) {
-				return nil, fmt.Sprintf("equilibrium is not reachable: %s forms by a step without return", n.Names[p]), nil
-			}
-		}
-	}
-	if !charged {
-		return nil, "the ratio at equilibrium depends on the charge: state one", nil
-	}
-	start := make([]float64, len(held))
-	for i, c := range held {
-		if !math.IsNaN(c) {
-			start[i] = c
-		}
-	}
-	eq, err := n.Equilibrium(start)
-	if err != nil {
-		return nil, "", err
-	}
-	for i, p := range products {
-		values[i] = eq.C[p]
-	}
-	return shareOut(groups, products, values), "", nil
-}
-
-// makes tells whether a step has the species among its products.
-func makes(r kinetics.Reaction, species int) bool {
-	for _, t := range r.To {
-		if t.Species == species {
-			return true
-		}
-	}
-	return false
 }
 
 // exchange words whether fast exchange holds.

@@ -21,9 +21,9 @@ type tableSource struct {
 }
 
 type tableRow struct {
-	name, reaction, label, source string
-	energy                        float64 // J/mol
-	line, reactionCol             int     // where the row and its reaction stand
+	name, reaction, label, source, formula string
+	energy                                 float64 // J/mol
+	line, reactionCol, formulaCol          int     // where the row, its reaction and its formula stand
 }
 
 // read reads the file: a header row, then one row for each state.
@@ -128,10 +128,14 @@ func (t *tableSource) read(in Inputs, energies string) ([]tableRow, fault.Proble
 			}
 			return ""
 		}
-		row := tableRow{name: cell("name"), reaction: cell("reaction"), label: cell("label"), source: cell("source"), line: line}
+		row := tableRow{name: cell("name"), reaction: cell("reaction"), label: cell("label"), source: cell("source"), formula: cell("formula"), line: line}
 		if i, ok := index["reaction"]; ok {
 			_, col := r.FieldPos(i)
 			row.reactionCol = column(line, col)
+		}
+		if i, ok := index["formula"]; ok {
+			_, col := r.FieldPos(i)
+			row.formulaCol = column(line, col)
 		}
 		switch first := seen[row.name]; {
 		case row.name == "":
