@@ -20,6 +20,13 @@ var basisField = schema.Field{Key: "basis", Doc: "the species that equiv and mol
 
 // concentrations turns a charge into mol/L by species; NaN where nothing is stated.
 func concentrations(m *kinetics.Mechanism, charge []schema.NamedAmount, basis string) ([]float64, fault.Problems) {
+	c, _, ps := concentrationsWith(m, charge, basis, math.NaN())
+	return c, ps
+}
+
+// concentrationsWith is concentrations where the basis is dosed as well (mol/L;
+// NaN: it is not). It returns the concentration too that equiv and mol% refer to.
+func concentrationsWith(m *kinetics.Mechanism, charge []schema.NamedAmount, basis string, dosed float64) ([]float64, float64, fault.Problems) {
 	var ps fault.Problems
 	c := make([]float64, len(m.Species))
 	for i := range c {
@@ -34,6 +41,12 @@ func concentrations(m *kinetics.Mechanism, charge []schema.NamedAmount, basis st
 			if a.Name == basis && a.Quantity.Unit.Dim == unit.Concentration {
 				base = a.Quantity.SI
 			}
+		}
+		switch {
+		case math.IsNaN(base):
+			base = dosed
+		case !math.IsNaN(dosed):
+			base += dosed
 		}
 		if math.IsNaN(base) && len(ps) == 0 {
 			ps = append(ps, problem([]string{"basis"}, fmt.Sprintf("%q has no concentration in the charge", basis), "charge it, such as "+basis+" = \"0.20 M\""))
@@ -57,7 +70,7 @@ func concentrations(m *kinetics.Mechanism, charge []schema.NamedAmount, basis st
 			c[i] = a.Quantity.SI
 		}
 	}
-	return c, ps
+	return c, base, ps
 }
 
 func unknownSpecies(m *kinetics.Mechanism, name string, path []string) *fault.Problem {
