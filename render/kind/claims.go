@@ -19,7 +19,7 @@ func init() {
 		Name:    "claims",
 		Doc:     "Conclusions that must hold: a reading, a bound, and how likely it must be.",
 		Method:  "Claims are held against the results; their probability is the share of fixed low-discrepancy draws of the stated errors (4096, or 512 of a run) in which they hold.",
-		Version: 1,
+		Version: 2,
 		Fields: []schema.Field{
 			{Key: "claim", Doc: "the conclusions, each with at-least, at-most or both", Type: schema.Tables, Required: true,
 				Example: `[{ says = "Cold keeps A.", reading = "limits/kinetic-ratio/A:B", at-least = "15:1" }]`, Fields: []schema.Field{
@@ -97,6 +97,8 @@ func (s *claimsSource) compute(in Inputs) (claimsValue, error) {
 		}
 		if p != nil {
 			ps = append(ps, p)
+		}
+		if ps.Failed() {
 			continue
 		}
 		v.Findings = append(v.Findings, f)
@@ -168,7 +170,27 @@ func (c claimSource) judge(i int, in Inputs) (Finding, *fault.Problem, error) {
 	if len(r.Assumes) > 0 {
 		f.Why += "; it rests on this: " + strings.Join(r.Assumes, "; ")
 	}
-	return f, nil, nil
+	return f, c.slowed(i, &f, draws, x >= low && x <= high, low, high), nil
+}
+
+// slowed warns where a claim would fare otherwise if the steps that are kept
+// fast were ten times slower.
+func (c claimSource) slowed(i int, f *Finding, d Draws, holds bool, low, high float64) *fault.Problem {
+	if len(d.Fast) == 0 || holds == (d.Slowed >= low && d.Slowed <= high) {
+		return nil
+	}
+	steps := "step " + d.Fast[0] + " is"
+	if len(d.Fast) > 1 {
+		steps = "steps " + listWords(d.Fast) + " are"
+	}
+	turn := "would fail"
+	if !holds {
+		turn = "would hold"
+	}
+	f.Why += fmt.Sprintf("; if %s ten times slower, it %s", steps, turn)
+	return &fault.Problem{Path: claimPath(i), Severity: fault.Warning,
+		Msg: fmt.Sprintf("this claim rests on how fast fast steps are: if %s ten times slower, it %s", steps, turn),
+		Fix: "give each of them a rate of its own, with k or the energy of its transition state"}
 }
 
 // weigh adds the probability of a claim. Where two samplings exist the less

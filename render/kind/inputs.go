@@ -23,6 +23,9 @@ type Draws struct {
 	Cases []Draw
 	None  string   // why there is no draw, where it is not that no energy has an error
 	Exact []string // the states without an error that the result answers to
+
+	Fast   []string // the steps that its mechanism keeps fast
+	Slowed float64  // what the result comes to when these are ten times slower; NaN where that gives no number
 }
 
 // A Draw is one sampling of one result.

@@ -144,7 +144,14 @@ func (s *Study) compute(ctx context.Context, b *Block) (fault.List, error) {
 			return nil, err
 		}
 		keep.Problems = append(keep.Problems, ps...)
-		keep.Intervals, keep.Remarks, keep.Draws = b.intervals(), b.Remarks, b.sampled.digest()
+		slow, err := b.slow(ctx, in)
+		if err != nil && ctx.Err() != nil {
+			return nil, ctx.Err()
+		}
+		if err != nil {
+			keep.Problems = append(keep.Problems, &fault.Problem{Severity: fault.Warning, Msg: "with its fast steps ten times slower the block could not be computed: " + err.Error(), Fix: "give these steps a rate of their own", Err: err})
+		}
+		keep.Intervals, keep.Remarks, keep.Draws = b.intervals(), b.Remarks, b.sampled.digest()+slow.digest()
 		s.remember(key, keep)
 	} else {
 		if b.Value, err = b.Kind.Restore(keep.Value); err != nil {

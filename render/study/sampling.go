@@ -239,16 +239,21 @@ func (b *Block) draws(ctx context.Context, in kind.Inputs, k kind.Key) (kind.Dra
 		_, err := b.Result(k)
 		return kind.Draws{}, err
 	}
+	var d kind.Draws
+	if slow, err := b.slow(ctx, in); err == nil && len(slow.steps) > 0 { // the block has said so where it failed
+		d.Fast, d.Slowed = slow.steps, slow.values[i]
+	}
 	s, err := b.draw(ctx, in)
 	switch {
 	case ctx.Err() != nil:
 		return kind.Draws{}, ctx.Err()
 	case err != nil: // the block has said so in a warning
-		return kind.Draws{None: "no draw could be made"}, nil
+		d.None = "no draw could be made"
+		return d, nil
 	case s == nil:
-		return kind.Draws{None: "results of this kind are not sampled"}, nil
+		d.None = "results of this kind are not sampled"
+		return d, nil
 	}
-	var d kind.Draws
 	if s.exact != nil {
 		d.Exact = s.exact[i]
 	}

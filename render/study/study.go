@@ -50,6 +50,7 @@ type Block struct {
 	refs     []ref
 	index    map[string]int // canonical key in the block to result
 	sampled  *sampling
+	slowed   *slowing
 }
 
 type ref struct {
@@ -115,9 +116,9 @@ func (s *Study) decode(b *content.Block) (*Block, fault.List) {
 	}
 	spec, faults := k.Decode(b.Tree)
 	if b.Tree.Broken { // content has said why; the id still names the block
-		return &Block{Source: b, Kind: k, ID: b.ID(), index: map[string]int{}, sampled: &sampling{}}, nil
+		return &Block{Source: b, Kind: k, ID: b.ID(), index: map[string]int{}, sampled: &sampling{}, slowed: &slowing{}}, nil
 	}
-	e := &Block{Source: b, Kind: k, Spec: spec, ID: k.ID(spec), index: map[string]int{}, sampled: &sampling{}}
+	e := &Block{Source: b, Kind: k, Spec: spec, ID: k.ID(spec), index: map[string]int{}, sampled: &sampling{}, slowed: &slowing{}}
 	if faults.Failed() {
 		for i := range faults {
 			faults[i].Block = b.Label
