@@ -24,6 +24,7 @@ const (
 	FormConstant             // an equilibrium constant, 2 digits
 	FormWhole                // no decimals
 	FormKelvin               // a temperature, up to 2 decimals
+	FormRise                 // a difference of temperatures, 2 digits: 10 K is 10 °C
 )
 
 const (
@@ -54,6 +55,9 @@ func Print(base float64, u Unit, f Form) string {
 // PrintBare is Print without the unit, for columns that name it in their head.
 // A span is in u there.
 func PrintBare(base float64, u Unit, f Form) string {
+	if f == FormRise {
+		u.Offset = 0
+	}
 	x := u.Of(base)
 	switch f {
 	case FormEnergy:
@@ -74,6 +78,8 @@ func PrintBare(base float64, u Unit, f Form) string {
 		return Fixed(x, 0)
 	case FormKelvin:
 		return trim(Fixed(x, 2))
+	case FormRise:
+		return digits(x, 2, -3, 3)
 	}
 	mantissa, power, scientific := strings.Cut(digits(x, 6, -3, 5), space)
 	if scientific {

@@ -55,6 +55,8 @@ func TestPrint(t *testing.T) {
 		{-78, "°C", Temperature, FormKelvin, "-78 °C"},
 		{195.15, "K", Temperature, FormKelvin, "195.15 K"},
 		{195.1549, "K", Temperature, FormKelvin, "195.15 K"},
+		{9.618, "K", Temperature, FormRise, "9.6 K"},
+		{-121.3, "K", Temperature, FormRise, "-120 K"},
 		{-78, "°C", Temperature, FormPlain, "-78 °C"},
 		{0, "°C", Temperature, FormPlain, "0 °C"},
 		{298.15, "K", Temperature, FormPlain, "298.15 K"},
@@ -88,7 +90,7 @@ func TestPrintBare(t *testing.T) {
 
 // Nothing in printed text lets a line break or passes for a hyphen.
 func TestPrintedSpaces(t *testing.T) {
-	for form := FormPlain; form <= FormKelvin; form++ {
+	for form := FormPlain; form <= FormRise; form++ {
 		for _, x := range []float64{0, -1, 0.3, 1, -3e-9, 4e12, math.NaN(), math.Inf(-1)} {
 			if s := Print(x, Must("M-1 s-1"), form); s == "" || strings.ContainsAny(s, " -") {
 				t.Errorf("%g in form %d prints %q", x, form, s)
@@ -220,5 +222,12 @@ func TestSuperscript(t *testing.T) {
 		if got := Superscript(symbol); got != want {
 			t.Errorf("%q: got %q, want %q", symbol, got, want)
 		}
+	}
+}
+
+// A difference of 9.6 K is one of 9.6 °C: the zero of a scale has no part in it.
+func TestPrintRise(t *testing.T) {
+	if got := Print(9.618, Must("°C"), FormRise); got != "9.6\u00a0°C" {
+		t.Errorf("got %q", got)
 	}
 }

@@ -265,10 +265,13 @@ func boundFor(r Result, b *schema.Bound) (float64, *fault.Problem) {
 		}
 		return 0, problem(nil, fmt.Sprintf("%q cannot bound %q, which is %s", b.Text, r.Key.Local(), what), fix)
 	}
-	if b.Quantity != nil {
-		return b.Quantity.SI, nil
+	switch {
+	case b.Quantity == nil:
+		return b.Value, nil
+	case r.Form == unit.FormRise: // 50 °C is then a difference, and no temperature
+		return b.Quantity.SI - b.Quantity.Unit.Offset, nil
 	}
-	return b.Value, nil
+	return b.Quantity.SI, nil
 }
 
 func boundWords(r Result, c claimSource) string {
@@ -318,8 +321,11 @@ func margin(r Result, x, low, high float64) string {
 	if near == high {
 		d = near - x
 	}
-	if r.Form == unit.FormPercent {
+	switch {
+	case r.Form == unit.FormPercent:
 		return unit.Fixed(100*d, 1) + " points"
+	case r.Unit.Dim == unit.Temperature:
+		return unit.Print(d, kelvinUnit, unit.FormRise)
 	}
 	return r.PrintBound(d)
 }

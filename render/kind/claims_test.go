@@ -143,3 +143,50 @@ T1 = { reaction = "R <=> R2", G = "18 ± 1" }
 		t.Errorf("%s, %q; want undecided for R2", f.Standing, f.Why)
 	}
 }
+
+// Differences of temperatures are bounded and printed as differences, on
+// whatever scale the bound is written.
+func TestClaimsOnTemperatures(t *testing.T) {
+	const run = addition + "\n```toml run\nid = \"cold\"\nmechanism = \"addition\"\ncharge = { R = \"0.20 M\", X = \"1.1 equiv\" }\nbasis = \"R\"\n" +
+		"programme = [\"2 h at -78 °C\", \"ramp to 20 °C over 3 h\", \"12 h at 20 °C\"]\nproducts = [\"A\", \"B\"]\ndensity = \"0.87 g/mL\"\nheat-capacity = \"1.7 J/g/K\"\n```\n"
+	for _, tt := range []struct{ reading, bound, value, margin string }{
+		{"cold/adiabatic-rise", `at-most = "12 K"`, "9.6\u00a0K", "2.4\u00a0K"},
+		{"cold/adiabatic-rise", `at-most = "12 °C"`, "9.6\u00a0°C", "2.4\u00a0K"},
+		{"cold/changeover-temperature/A:B", `at-most = "0 °C"`, "\u22122\u00a0°C", "1.8\u00a0K"},
+	} {
+		note := run + "\n```toml claims\n[[claim]]\nsays = \"It holds.\"\nreading = \"" + tt.reading + "\"\n" + tt.bound + "\n```\n"
+		f := findings(t, good(t, note, nil))[0]
+		if f.Standing != kind.Holds || f.Value != tt.value || f.Margin != tt.margin {
+			t.Errorf("%s: %s, value %q, margin %q; want holds, %q, %q", tt.reading, f.Standing, f.Value, f.Margin, tt.value, tt.margin)
+		}
+	}
+}
+
+// A step that is kept fast is an assumption: a claim that turns when it is ten
+// times slower says so, and one that does not is left alone. Fast steps of one
+// molecule run at 1e9 1/s, so the step beside it takes 1/(1 + 1e8/1e9) of R at
+// first and half of it when the fast one is ten times slower.
+func TestClaimRestsOnAFastStep(t *testing.T) {
+	note := func(bound string) string {
+		return "```toml mechanism\nid = \"race\"\ntemperature = \"25 °C\"\n[species]\nR = { G = 0 }\nA = { G = -10 }\nB = { G = -10 }\n[step]\n" +
+			"fast = { reaction = \"R <=> A\", fast = true }\nslow = { reaction = \"R -> B\", k = \"1e8 s-1\", at = \"25 °C\" }\n```\n" +
+			"```toml selectivity\nid = \"limits\"\nmechanism = \"race\"\nfrom = \"R\"\nproducts = [\"A\", \"B\"]\n```\n" +
+			"```toml claims\n[[claim]]\nsays = \"A forms.\"\nreading = \"limits/kinetic/A\"\nat-least = \"" + bound + "\"\n```\n"
+	}
+	for _, tt := range []struct {
+		bound string
+		warns bool
+	}{{"80 %", true}, {"40 %", false}} {
+		s, faults := evaluate(t, note(tt.bound), nil)
+		warned := false
+		for _, f := range faults {
+			warned = warned || strings.Contains(f.Msg, "if step fast is ten times slower, it would fail")
+		}
+		if warned != tt.warns {
+			t.Errorf("at least %s: %v", tt.bound, faults)
+		}
+		if f := findings(t, s)[0]; f.Standing != kind.Holds || strings.Contains(f.Why, "ten times slower") != tt.warns {
+			t.Errorf("at least %s: %s, %q", tt.bound, f.Standing, f.Why)
+		}
+	}
+}

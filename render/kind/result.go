@@ -137,6 +137,7 @@ type Sampler struct {
 	Mechanism    *kinetics.Mechanism // whose energies are drawn
 	Temperatures []float64           // K, at which the results are computed
 	Draws        int                 // of each plan; 0: spread.Draws. Fewer where one draw costs much
+	Noise        float64             // relative error of a draw: a narrower interval is none
 	// Results computes the block's results for a mechanism with shifted
 	// energies: the same keys in the same order at every call.
 	Results func(*kinetics.Mechanism) ([]Result, error)

@@ -13,6 +13,10 @@ import (
 // an integration.
 const runDraws = 512
 
+// runNoise is the relative error of a draw, ten times what its integration is
+// asked for: errors of steps add up.
+const runNoise = 10 * drawTolerance
+
 func init() {
 	Register(Kind[runSource, runValue]{
 		Name:    "run",
@@ -177,7 +181,7 @@ func (s *runSource) sampler(ctx context.Context, in Inputs) (Sampler, error) {
 	if err != nil {
 		return Sampler{}, err
 	}
-	return Sampler{Mechanism: m, Temperatures: r.plan.prog.extremes(), Draws: runDraws, Results: func(m *kinetics.Mechanism) ([]Result, error) {
+	return Sampler{Mechanism: m, Temperatures: r.plan.prog.extremes(), Draws: runDraws, Noise: runNoise, Results: func(m *kinetics.Mechanism) ([]Result, error) {
 		v, err := r.simulate(ctx, m)
 		if err != nil {
 			return nil, err

@@ -14,6 +14,9 @@ import (
 	"saddlebook/kinetics/unit"
 )
 
+// drawTolerance is that of the runs with shifted energies.
+const drawTolerance = 1e-6
+
 // An effort is how much a run computes.
 type effort struct {
 	rtol  float64
@@ -22,7 +25,7 @@ type effort struct {
 
 var (
 	fine   = effort{rtol: 1e-9, trace: true}
-	coarse = effort{rtol: 1e-6} // for draws of the errors, which lie far apart
+	coarse = effort{rtol: drawTolerance} // for draws of the errors, which lie far apart
 )
 
 // tracePoints is how many points the figure and the file of numbers have, and

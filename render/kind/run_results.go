@@ -58,7 +58,7 @@ func (s *runSource) results(v runValue) []Result {
 	add(Key{Quantity: "end"}, Value(v.End, "none"), seconds, unit.FormSpan)
 	add(Key{Quantity: "ended-by"}, Number{Kind: Words, Text: s.endedBy(v)}, plain, unit.FormPlain)
 	if v.Heat.Shown {
-		add(Key{Quantity: "adiabatic-rise"}, numberOr(v.Heat.Rise, v.Heat.why()), kelvinUnit, unit.FormWhole)
+		add(Key{Quantity: "adiabatic-rise"}, numberOr(v.Heat.Rise, v.Heat.why()), kelvinUnit, unit.FormRise)
 	}
 	return out
 }

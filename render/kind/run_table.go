@@ -95,7 +95,7 @@ func (s *runSource) table(v runValue, sheet *paper.Sheet) paper.Table {
 				c.Text = "–"
 			}
 			if key == "heat-left" && !q.HeatRise.none() {
-				c.Beside = unit.Print(float64(q.HeatRise), kelvinUnit, unit.FormWhole)
+				c.Beside = unit.Print(float64(q.HeatRise), kelvinUnit, unit.FormRise)
 			}
 			row = append(row, c)
 		}

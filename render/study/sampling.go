@@ -26,6 +26,7 @@ type sampling struct {
 	runs  [][][]float64 // by case, by result, by draw
 	raise []float64     // by case: the share of draws with a raised transition state
 	exact [][]string    // by result: the states without an error that it answers to
+	noise float64       // relative width of an interval that is none
 }
 
 // mostValues bounds the work of one sampling to some seconds.
@@ -49,6 +50,7 @@ func (s *sampling) run(ctx context.Context, b *Block, in kind.Inputs) error {
 	if !m.HasErrors() {
 		return nil
 	}
+	s.noise = sampler.Noise
 	draws := sampler.Draws
 	if draws == 0 {
 		draws = spread.Draws
@@ -163,7 +165,7 @@ func (s *sampling) findExact(b *Block, sampler kind.Sampler) error {
 		}
 		for j, r := range rs {
 			was := b.Results[j].Value
-			if r.Value.Kind != was.Kind || math.Abs(r.Value.Value-was.Value) > 1e-9*math.Abs(was.Value) {
+			if r.Value.Kind != was.Kind || math.Abs(r.Value.Value-was.Value) > max(1e-9, s.noise)*math.Abs(was.Value) {
 				s.exact[j] = append(s.exact[j], name)
 			}
 		}
@@ -194,7 +196,7 @@ func (b *Block) sample(ctx context.Context, in kind.Inputs) (fault.Problems, err
 		}
 		for c := range s.cases {
 			q := spread.Quantiles(s.runs[c][i], 0.05, 0.5, 0.95)
-			if !(q[0] < q[2]) || math.IsInf(q[2], 0) {
+			if !(q[2]-q[0] > s.noise*math.Abs(q[1])) || math.IsInf(q[2], 0) {
 				continue // the same at every draw, endless at some, or not a number
 			}
 			b.Results[i].Intervals = append(b.Results[i].Intervals, spread.Interval{Case: s.cases[c], Low: q[0], Median: q[1], High: q[2]})
