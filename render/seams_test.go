@@ -25,12 +25,15 @@ var seams = []struct {
 		"RateConstant", "EquilibriumConstant", "Print", "PrintBare", "Fixed", "Digits", "Percent", "Ratio", "RatioToOne", "Span"}},
 	{"Sources", "content", []string{"Notebook", "Settings", "Note", "Piece", "Block", "Reading", "Link", "Heading", "Open"}},
 	{"Field lists", "content/schema", []string{"Node", "Parse", "Field", "Decode", "Check", "Group", "Bound", "NamedAmount", "Nearest", "Reference", "JSONSchema"}},
-	{"Mechanism and network", "kinetics", []string{"Term", "Species", "Step", "Common", "Mechanism", "Complaint", "ParseReaction", "ParseSum",
+	{"Mechanism and network", "kinetics", []string{"Term", "Species", "Step", "Law", "Constant", "StatedK", "Common", "Mechanism", "Complaint", "ParseReaction", "ParseSum",
 		"Network", "Reaction", "Limit", "Limits", "Composition", "Level"}},
 	{"Sampling", "kinetics/spread", []string{"Case", "Plan", "Part", "Sample", "Interval", "Quantiles"}},
+	{"Runs", "kinetics/course", []string{"Simulate", "Prepare", "Plan", "Run", "Leg", "Dose", "Removal", "Until", "Product", "Course", "Point", "Pair", "Warming", "Heat", "HeatData", "HeatPoint"}},
+	{"What decides", "kinetics/control", []string{"Analyse", "Steady", "Problem", "Result", "State", "Order", "Cycle", "Level", "Pair", "PointError"}},
 	{"Block kinds and results", "render/kind", []string{"Kind", "Register", "Ref", "Inputs", "Draws", "Draw", "Gift", "Key", "Number", "Result", "Sampler", "Finding", "Standing"}},
-	{"Scenes", "diagram", []string{"Scene", "Role", "Mark", "Line", "Curve", "Box", "Dot", "Words", "Group", "Profile", "ProfilePath", "ProfilePoint", "Bars", "BarGroup", "Bar"}},
-	{"Page parts", "render/paper", []string{"Block", "Sheet", "New", "Value", "Table", "Column", "Cell", "Figure", "ClaimRow"}},
+	{"Scenes", "diagram", []string{"Scene", "Role", "Mark", "Line", "Curve", "Box", "Dot", "Words", "Group", "Profile", "ProfilePath", "ProfilePoint", "Bars", "BarGroup", "Bar",
+		"SignedBars", "SignedGroup", "SignedBar", "TimeCourse", "TimeLine", "TimePoint", "TimeNode", "TimeMark"}},
+	{"Page parts", "render/paper", []string{"Block", "Sheet", "New", "Value", "Table", "Column", "Cell", "Figure", "ClaimRow", "Data"}},
 }
 
 const (
