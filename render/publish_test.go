@@ -191,8 +191,8 @@ func TestNoResultStandsInTheSource(t *testing.T) {
 	for _, l := range lines {
 		v := strings.TrimPrefix(l.value(), "-")
 		mantissa, _, _ := strings.Cut(v, "e")
-		if len(digits.FindAllString(strings.Trim(mantissa, "0."), -1)) < 5 {
-			continue
+		if len(digits.FindAllString(strings.Trim(mantissa, "0."), -1)) < 5 || strings.Trim(mantissa, "0.9") == "" {
+			continue // too few digits, or nines on the way to 1, which stand anywhere
 		}
 		looked++
 		if i := strings.Index(source, mantissa); i >= 0 {

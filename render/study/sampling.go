@@ -32,6 +32,10 @@ type sampling struct {
 // mostValues bounds the work of one sampling to some seconds.
 const mostValues = 6_000_000
 
+// leastEnergy is the width, in J/mol, below which an interval of an energy is
+// the rounding of sums that cancel.
+const leastEnergy = 1e-6
+
 // draw runs the sampler of the block once.
 func (b *Block) draw(ctx context.Context, in kind.Inputs) (*sampling, error) {
 	if b.Kind.Sampler == nil {
@@ -190,18 +194,29 @@ func (b *Block) sample(ctx context.Context, in kind.Inputs) (fault.Problems, err
 	if s == nil || len(s.cases) == 0 {
 		return nil, nil
 	}
+	blank := 0 // results that some draws gave no number for
 	for i := range b.Results {
 		if b.Results[i].Value.Kind != kind.Real {
 			continue
 		}
+		if slices.ContainsFunc(s.runs, func(run [][]float64) bool { return slices.ContainsFunc(run[i], math.IsNaN) }) {
+			blank++
+		}
+		least := 0.0
+		if b.Results[i].Unit.Dim == unit.MolarEnergy {
+			least = leastEnergy
+		}
 		for c := range s.cases {
 			q := spread.Quantiles(s.runs[c][i], 0.05, 0.5, 0.95)
-			if !(q[2]-q[0] > s.noise*math.Abs(q[1])) || math.IsInf(q[2], 0) {
+			if !(q[2]-q[0] > max(least, s.noise*math.Abs(q[1]))) || math.IsInf(q[2], 0) {
 				continue // the same at every draw, endless at some, or not a number
 			}
 			b.Results[i].Intervals = append(b.Results[i].Intervals, spread.Interval{Case: s.cases[c], Low: q[0], Median: q[1], High: q[2]})
 		}
 		b.Results[i].Widest()
+	}
+	if blank > 0 {
+		b.Remarks = append(b.Remarks, fmt.Sprintf("%s no interval: some draws gave no number there, such as a time after the run had ended", count(blank, "result has", "results have")))
 	}
 	var ps fault.Problems
 	for c, share := range s.raise {
@@ -272,4 +287,11 @@ func unitWords(err error) (msg, fix string) {
 		return ue.Msg, ue.Fix
 	}
 	return err.Error(), "leave out the unit"
+}
+
+func count(n int, one, many string) string {
+	if n == 1 {
+		return "1 " + one
+	}
+	return fmt.Sprintf("%d %s", n, many)
 }
