@@ -28,11 +28,11 @@ type careful struct {
 	chosen  []int32 // channels with a row of their own, fast ones first
 }
 
-// Bounds in units of the relative tolerance. The plain system is left when the
-// digits that cancel in a pivot, or gamma h times the fastest rate where rows
-// had to be exchanged, times the rounding unit exceed enter; it is taken up
-// again when gamma h times the fastest rate times the rounding unit is below
-// leave. Channels within reach below enter are worked through too, so
+// Bounds in units of the relative tolerance, with gh for gamma h, or what stands
+// for it in the multistep formulas. The plain system is left when the digits
+// that cancel in a pivot, or gh times the fastest rate where rows had to be
+// exchanged, times the rounding unit exceed enter; it is taken up again when gh
+// times the fastest rate times the rounding unit is below leave. Channels within reach below enter are worked through too, so
 // that a longer step need not start anew.
 const (
 	rounding = 1.1e-16
@@ -283,17 +283,17 @@ func (c *careful) solve(b []float64) {
 	}
 }
 
-// factorise factorises the matrix of a step of length h, with the careful
-// system when the plain one has lost more digits than the tolerance allows,
-// and prepares the step anew if the system changed.
-func (e *engine) factorise(s *System, tau, h float64) bool {
-	strain := rounding * e.method.gamma * h * e.fastest
+// factorise factorises 1/gh - J, with the careful system when the plain one has
+// lost more digits than the tolerance allows, and prepares the step from time
+// tau anew if the system changed.
+func (e *engine) factorise(s *System, tau, gh float64) bool {
+	strain := rounding * gh * e.fastest
 	if e.careful != nil && strain < leave*e.rtol {
 		e.kept, e.careful, e.net = e.careful, nil, e.plain
 		e.prepare(tau)
 	}
 	if e.careful == nil {
-		ok := e.factor(h)
+		ok := e.factor(gh)
 		if strain <= enter*e.rtol || ok && !e.byRows && rounding*e.sparse.loss <= enter*e.rtol {
 			return ok
 		}
@@ -301,7 +301,7 @@ func (e *engine) factorise(s *System, tau, h float64) bool {
 	if e.speed == nil {
 		e.speed = make([]float64, len(s.channels))
 	}
-	least := enter * e.rtol / (rounding * e.method.gamma * h)
+	least := enter * e.rtol / (rounding * gh)
 	e.net.speeds(e.y, e.speed)
 	c := e.careful
 	if c == nil {
@@ -315,5 +315,5 @@ func (e *engine) factorise(s *System, tau, h float64) bool {
 		e.careful, e.net = c, c.net
 		e.prepare(tau)
 	}
-	return e.factor(h)
+	return e.factor(gh)
 }

@@ -91,7 +91,7 @@ func TestOrder(t *testing.T) {
 						tau := float64(i) * h
 						clear(e.jac)
 						e.prepare(tau)
-						if !e.factor(h) {
+						if !e.factor(m.gamma * h) {
 							t.Fatal("no factorisation")
 						}
 						e.step(tau, h)

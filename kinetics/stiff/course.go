@@ -23,12 +23,17 @@ type Course struct {
 // Errors are those of NewSolver and Run. With ErrStuck, or the error of the
 // context, the course up to there is returned too.
 func Solve(ctx context.Context, sys *System, opt Options, p Problem, at []float64) (*Course, error) {
-	if !sort.Float64sAreSorted(at) || len(at) > 0 && !(at[0] >= p.From && at[len(at)-1] <= p.To) {
-		return nil, bad("times asked for do not ascend from %g s to %g s; sort them and keep them within the run", p.From, p.To)
-	}
 	s, err := NewSolver(sys, opt)
 	if err != nil {
 		return nil, err
+	}
+	return s.course(ctx, p, at)
+}
+
+func (s *Solver) course(ctx context.Context, p Problem, at []float64) (*Course, error) {
+	sys := s.sys
+	if !sort.Float64sAreSorted(at) || len(at) > 0 && !(at[0] >= p.From && at[len(at)-1] <= p.To) {
+		return nil, bad("times asked for do not ascend from %g s to %g s; sort them and keep them within the run", p.From, p.To)
 	}
 	c := &Course{}
 	read := func(t float64, get func([]float64), slope func(int, []float64)) {
@@ -47,7 +52,7 @@ func Solve(ctx context.Context, sys *System, opt Options, p Problem, at []float6
 			c.T, c.Y, c.Slopes = c.T[:last], c.Y[:last], c.Slopes[:last]
 		}
 	}
-	err = s.Run(ctx, &p, func(st *Step) error {
+	err := s.Run(ctx, &p, func(st *Step) error {
 		drop(st.T0)
 		for len(c.T) < len(at) && at[len(c.T)] <= st.T1 {
 			t := at[len(c.T)]

@@ -18,18 +18,28 @@
 // every component, and of every sensitivity, is held below
 // ATol + RTol*|y| in each step. The next step follows from the last two errors.
 //
-// Linear algebra. Species are put in the order of Markowitz once; pivots stay
+// Large systems. Where a factorisation takes at least about five times as long
+// as a solution with its factors (from some hundred species of a sparse
+// network, some fifteen of a full one), and RTol is 1e-4 or finer, steps are
+// those of the numerical differentiation formulas of orders 1 to 5: about two
+// right sides and solutions a step, and a factorisation only where the length
+// of the step changes. They work at 0.03 of the tolerance, so that both methods
+// end about as near to the solution. The Rosenbrock method serves runs with
+// events or sensitivities, and takes over, to the end of the piece, where step
+// after step fails. Stats.Multistep tells which steps were whose.
+//
+// Linear algebra. Species are put in an order of little fill once; pivots stay
 // on the diagonal of a fixed sparse pattern, and a factorisation only multiplies
 // and subtracts. A factorisation whose pivots turn out too small (autocatalysis)
 // is done again in a full matrix with row exchange.
 //
 // Fast exchange. When the step is long against a fast exchange, more digits
 // cancel in the pivots of 1/(gamma h) - J than the tolerance allows: its slow
-// part is lost in rounding, and mass and slow rates with it. The rows are then summed, in the whole numbers of
-// the stoichiometry and before any rate is multiplied in, so that each fast
-// channel stands in one row and the other rows hold slow rates only: elimination
-// of N in the order of speed. Rate constants from 1e-12 to 1e13 1/s in one
-// system cost no digits.
+// part is lost in rounding, and mass and slow rates with it. The rows are then
+// summed, in the whole numbers of the stoichiometry and before any rate is
+// multiplied in, so that each fast channel stands in one row and the other rows
+// hold slow rates only: elimination of N in the order of speed. Rate constants
+// from 1e-12 to 1e13 1/s in one system cost no digits.
 //
 // Conservation. Every linear sum that no reaction changes (found by eliminating
 // N) is kept by the method up to rounding. What rounding leaves is taken out
@@ -69,7 +79,7 @@
 // stands at zero from the start, is not reported. Beyond a few hundred species,
 // systems that need row exchange in every step are slow: it is done in a full
 // matrix. Below about RTol 1e-10 the stiff parts of a solution converge with
-// order 3 to 4, and steps become many.
+// order 3 to 4 by the Rosenbrock method, and steps become many.
 //
 // # Errors
 //
@@ -83,7 +93,10 @@
 //   - Steinebach, BIT Numer. Math. 63, 27 (2023): Rodas5P.
 //   - Hairer and Wanner, Solving Ordinary Differential Equations II, 2nd ed.
 //     (1996), chapters IV.7 and IV.8: Rosenbrock methods, control of the step.
-//   - Markowitz, Management Sci. 3, 255 (1957): order of elimination.
+//   - Shampine and Reichelt, SIAM J. Sci. Comput. 18, 1 (1997): numerical
+//     differentiation formulas.
+//   - Markowitz, Management Sci. 3, 255 (1957), and Tinney and Walker, Proc. IEEE
+//     55, 1801 (1967): order of elimination.
 //   - Mazzia and Magherini, Test Set for Initial Value Problem Solvers, release
 //     2.4 (2008): test problems.
 package stiff

@@ -128,9 +128,9 @@ func (e *engine) prepare(tau float64) {
 	}
 }
 
-// factor factorises 1/(gamma h) - J.
-func (e *engine) factor(h float64) bool {
-	shift := 1 / (e.method.gamma * h)
+// factor factorises 1/gh - J.
+func (e *engine) factor(gh float64) bool {
+	shift := 1 / gh
 	e.stats.Factorisations++
 	if e.careful != nil {
 		ok := e.careful.factor(shift)

@@ -69,7 +69,7 @@ func (s *Solver) events(p *Problem, st *Step, tau, h float64) (int, float64, err
 		if e.moving {
 			e.ratesAt(tau, false)
 		}
-		if !e.factor(length) {
+		if !e.factor(e.method.gamma * length) {
 			return -1, h, s.stuck(length, "no factorisation at an event")
 		}
 		if math.IsInf(e.step(tau, length), 1) {

@@ -29,7 +29,14 @@ func FuzzNetwork(f *testing.F) {
 			}
 		}
 		opt := Options{RTol: math.Pow(10, -3-5*r.Float64()), ATol: 1e-15, MaxSteps: 20000}
-		c, err := Solve(context.Background(), sys, opt, Problem{To: math.Pow(10, 8*r.Float64()-3), Start: start, Rates: k}, nil)
+		s, err := NewSolver(sys, opt)
+		if err != nil {
+			t.Fatal(err)
+		}
+		if a%2 == 0 {
+			s = forced(t, sys, opt)
+		}
+		c, err := s.course(context.Background(), Problem{To: math.Pow(10, 8*r.Float64()-3), Start: start, Rates: k}, nil)
 		if err != nil {
 			if !errors.Is(err, ErrStuck) {
 				t.Fatal(err)

@@ -8,9 +8,11 @@ type Step struct {
 	e         *engine
 	tau0, len float64
 	origin    float64
+	multi     *multistep // that took the step; nil: the Rosenbrock method did
 }
 
 func (st *Step) set(e *engine, tau0, tau1, to float64, final bool) {
+	st.multi = nil
 	st.e, st.origin, st.tau0, st.len = e, e.origin, tau0, tau1-tau0
 	st.T0, st.T1 = e.origin+tau0, e.origin+tau1
 	if final {
@@ -19,11 +21,16 @@ func (st *Step) set(e *engine, tau0, tau1, to float64, final bool) {
 }
 
 // At writes the concentrations at time t, T0 to T1, to out. The ends are the
-// states of the integration; between them the dense output of the method is
-// as accurate as a step to within a small factor.
+// states of the integration; between them the dense output of the method, or
+// the polynomial of the multistep formulas, is as accurate as a step to within a
+// small factor.
 func (st *Step) At(t float64, out []float64) {
 	e := st.e
-	st.blend(st.fraction(t), e.y, e.next, e.u, out)
+	if th := st.fraction(t); st.multi == nil || th == 0 || th == 1 {
+		st.blend(th, e.y, e.next, e.u, out)
+	} else {
+		st.multi.value(t-st.origin, e.order.place, out)
+	}
 }
 
 // SlopeAt writes dy/dp of a parameter at time t to out.

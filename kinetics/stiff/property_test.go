@@ -91,7 +91,8 @@ func TestEquilibrium(t *testing.T) {
 	}
 }
 
-// TestLarge: 120 species over 25 decades, sparse and careful.
+// TestLarge: 120 species over 25 decades, by either method. At the finer
+// tolerance both need the careful system, sparse.
 func TestLarge(t *testing.T) {
 	r := rand.New(rand.NewPCG(11, 12))
 	const n = 120
@@ -99,17 +100,43 @@ func TestLarge(t *testing.T) {
 	start := make([]float64, n)
 	start[0] = 1
 	p := &Problem{To: 1e5, Start: start, Rates: k}
-	loose, s := end(t, sys, Options{RTol: 1e-4, ATol: 1e-14}, p)
-	tight, _ := end(t, sys, Options{RTol: 1e-7, ATol: 1e-17}, p)
-	sum := 0.0
-	for j := range loose {
-		sum += loose[j]
-		if e := math.Abs(loose[j]-tight[j]) / (tight[j] + 1e-12); !(e <= 1e-3) {
-			t.Errorf("y[%d] = %g and %g at the two tolerances", j, loose[j], tight[j])
+	runs := map[string][]float64{}
+	for _, multi := range []bool{true, false} {
+		for _, rtol := range []float64{1e-4, 1e-8} {
+			s, err := NewSolver(sys, Options{RTol: rtol, ATol: 1e-10 * rtol})
+			if err != nil {
+				t.Fatal(err)
+			}
+			if !multi {
+				s.multi = nil
+			}
+			if err := s.Run(context.Background(), p, nil); err != nil {
+				t.Fatal(err)
+			}
+			y, sum := make([]float64, n), 0.0
+			s.Y(y)
+			for _, v := range y {
+				sum += v
+			}
+			near(t, fmt.Sprintf("multistep %v, rtol %g: sum", multi, rtol), sum, 1, 1e-13, "conservation")
+			st := s.Stats()
+			if st.Multistep > 0 != multi || (st.Rebuilds > 0) != (rtol < 1e-7) {
+				t.Errorf("multistep %v, rtol %g: %+v", multi, rtol, st)
+			}
+			t.Logf("%+v", st)
+			runs[fmt.Sprint(multi, rtol)] = y
 		}
 	}
-	near(t, "sum", sum, 1, 1e-13, "conservation")
-	t.Logf("%+v", s.Stats())
+	for _, pair := range []struct {
+		a, b string
+		rel  float64
+	}{{"true 0.0001", "false 1e-08", 1e-3}, {"false 0.0001", "true 1e-08", 1e-3}, {"true 1e-08", "false 1e-08", 1e-7}} {
+		for j, y := range runs[pair.a] {
+			if w := runs[pair.b][j]; !(math.Abs(y-w) <= pair.rel*(w+1e-12)) {
+				t.Errorf("y[%d] = %g by %s, %g by %s", j, y, pair.a, w, pair.b)
+			}
+		}
+	}
 }
 
 // TestNegativeNever: a fast second-order removal that runs a component down to
@@ -211,25 +238,141 @@ func TestRowExchange(t *testing.T) {
 	}
 }
 
-// TestUnlisted: a factorisation without its list of operations is the same.
-func TestUnlisted(t *testing.T) {
-	p := testProblems()[3]
-	sys, k := build(t, p.n, p.steps)
-	run := &Problem{To: p.t, Start: p.start, Rates: k}
-	want, _ := end(t, sys, Options{}, run)
-	s, err := NewSolver(sys, Options{})
-	if err != nil {
-		t.Fatal(err)
+// TestSparse solves random sparse systems, with a list of operations and
+// without, as a full matrix does.
+func TestSparse(t *testing.T) {
+	r := rand.New(rand.NewPCG(11, 12))
+	for i := range 40 {
+		n := 1 + r.IntN(60)
+		seen := map[int]bool{}
+		var positions []int
+		for range n * (1 + r.IntN(5)) {
+			row, col := r.IntN(n), r.IntN(n)
+			for _, p := range []int{row*n + col, col*n + row}[:1+r.IntN(2)] {
+				if row != col && !seen[p] {
+					seen[p] = true
+					positions = append(positions, p)
+				}
+			}
+		}
+		var first []int
+		if i%3 == 0 {
+			first = r.Perm(n)[:n/4]
+		}
+		o := newOrdering(n, positions, first)
+		s, full := newSparseLU(o, 1e9), newDenseLU(n)
+		jac := make([]float64, len(o.cols))
+		set := func(row, col int32, x float64) {
+			jac[o.find(row, col)] = -x
+			full.val[int(row)*n+int(col)] = x
+		}
+		for _, p := range positions {
+			set(o.place[p/n], o.place[p%n], r.NormFloat64())
+		}
+		for i := range int32(n) {
+			set(i, i, 10+10*r.Float64())
+		}
+		s.load(jac)
+		if i%2 == 0 {
+			s.to = nil
+		}
+		if !s.factor() || !full.factor() {
+			t.Fatalf("matrix %d: no factors", i)
+		}
+		b, want := make([]float64, n), make([]float64, n)
+		for i := range b {
+			b[i] = r.NormFloat64()
+			want[i] = b[i]
+		}
+		s.solve(b)
+		full.solve(want)
+		for j := range b {
+			if !(math.Abs(b[j]-want[j]) < 1e-10) {
+				t.Errorf("matrix %d: x[%d] = %g, want %g as by the full matrix", i, j, b[j], want[j])
+			}
+		}
 	}
-	s.e.sparse.to = nil
-	if err := s.Run(context.Background(), run, nil); err != nil {
-		t.Fatal(err)
+}
+
+// TestSlopesStiff: slopes by ln k of random networks 25 decades wide, in which
+// fast exchange needs the careful system, equal central differences.
+func TestSlopesStiff(t *testing.T) {
+	r := rand.New(rand.NewPCG(13, 14))
+	rebuilt := 0
+	for i := range 12 {
+		n := 3 + r.IntN(5)
+		steps := detailed(r, n, 1+r.IntN(5))
+		sys, k := build(t, n, steps)
+		start := make([]float64, n)
+		start[0], start[n-1] = 1, 0.3
+		// One barrier moves: both ways of a step, so that detailed balance stays.
+		which := 2 * r.IntN(len(steps)/2)
+		opt := Options{RTol: 1e-10, ATol: 1e-22}
+		p := Problem{To: math.Pow(10, -4+8*r.Float64()), Start: start, Rates: k,
+			Params: []Param{{Weights: []Weight{{which, 1}, {which + 1, 1}}}}}
+		at := []float64{p.To}
+		c, err := Solve(context.Background(), sys, opt, p, at)
+		if err != nil {
+			t.Fatal(err)
+		}
+		rebuilt += c.Stats.Rebuilds
+		const d = 1e-3
+		var side [2][]float64
+		for x, sgn := range []float64{-1, 1} {
+			moved := append(Constant(nil), k...)
+			moved[which] *= math.Exp(sgn * d)
+			moved[which+1] *= math.Exp(sgn * d)
+			q, err := Solve(context.Background(), sys, opt, Problem{To: p.To, Start: start, Rates: moved}, nil)
+			if err != nil {
+				t.Fatal(err)
+			}
+			side[x] = q.Final
+		}
+		for sp := range start {
+			diff := (side[1][sp] - side[0][sp]) / (2 * d)
+			if got := c.Slopes[0][0][sp]; !(math.Abs(got-diff) <= 1e-5*math.Abs(diff)+1e-6*c.Final[sp]+1e-20) {
+				t.Errorf("network %d, t = %g, species %d at %g: slope %.9g, central difference %.9g", i, p.To, sp, c.Final[sp], got, diff)
+			}
+		}
 	}
-	got := make([]float64, p.n)
-	s.Y(got)
-	for i := range want {
-		if got[i] != want[i] {
-			t.Errorf("y[%d] = %.17g, want %.17g", i, got[i], want[i])
+	if rebuilt == 0 {
+		t.Error("no network needed the careful system")
+	}
+}
+
+// TestRelabelledRandom: other numbers for species and reactions change nothing.
+func TestRelabelledRandom(t *testing.T) {
+	r := rand.New(rand.NewPCG(15, 16))
+	for i := range 20 {
+		n := 3 + r.IntN(8)
+		steps := detailed(r, n, 1+r.IntN(8))
+		start := make([]float64, n)
+		start[0], start[n-1] = 1, 0.3
+		at := math.Pow(10, -4+8*r.Float64())
+		opt := Options{RTol: 1e-8, ATol: 1e-20}
+		sys, k := build(t, n, steps)
+		want, _ := end(t, sys, opt, &Problem{To: at, Start: start, Rates: k})
+		name := r.Perm(n)
+		rename := func(in []int) (out []int) {
+			for _, a := range in {
+				out = append(out, name[a])
+			}
+			return out
+		}
+		var other []step
+		for _, j := range r.Perm(len(steps)) {
+			other = append(other, step{steps[j].k, rename(steps[j].lhs), rename(steps[j].rhs)})
+		}
+		first := make([]float64, n)
+		for j, y := range start {
+			first[name[j]] = y
+		}
+		sys, k = build(t, n, other)
+		got, _ := end(t, sys, opt, &Problem{To: at, Start: first, Rates: k})
+		for j, w := range want {
+			if g := got[name[j]]; !(math.Abs(g-w) <= 1e-6*w+1e-18) {
+				t.Errorf("network %d, t = %g: y[%d] = %.12g, want %.12g as under the first numbers", i, at, j, g, w)
+			}
 		}
 	}
 }

@@ -19,6 +19,7 @@ type Options struct {
 // Stats count the work of a run.
 type Stats struct {
 	Steps, Rejected int
+	Multistep       int // of Steps, those of the multistep formulas
 	Negative        int // of Rejected, those for a negative concentration
 	Leaks           int // of Rejected, those that broke a conservation law by more than the tolerance
 	Factorisations  int
@@ -53,6 +54,7 @@ type Solver struct {
 	sides []int8
 	hits  []Hit
 	step  Step
+	multi *multistep // nil where it would be no gain
 }
 
 // NewSolver chooses the order of elimination for the system and sets up scratch
@@ -123,6 +125,9 @@ func (s *Solver) build() {
 	e.u, e.v, e.g, e.jac = take(maxStages*n), take(nc), take(e.net.partials()), take(size)
 	e.k, e.dk, e.dkf, e.dkb = take(s.sys.rates), take(s.sys.rates), take(nc), take(len(e.net.kb))
 	e.lawM, e.lawB = take(m*m), take(m)
+	if float64(e.order.flops) >= dear*float64(size) && e.rtol <= fine {
+		s.multi = newMultistep(e)
+	}
 }
 
 // Stats returns the counts of the last run.
@@ -204,80 +209,7 @@ func (s *Solver) Run(ctx context.Context, p *Problem, visit func(*Step) error) e
 	return nil
 }
 
-// jump applies the jumps at time t.
-func (s *Solver) jump(p *Problem, t float64) error {
-	e := &s.e
-	for x, j := range p.Jumps {
-		if j.T != t {
-			continue
-		}
-		for i, c := range e.order.place {
-			if j.Scale != nil {
-				e.y[c] *= j.Scale[i]
-				if e.sens != nil {
-					for _, q := range e.sens.list {
-						q.s[c] *= j.Scale[i]
-					}
-				}
-			}
-			if j.Add != nil && j.Add[i] != 0 {
-				e.y[c] += j.Add[i]
-				if e.y[c] < 0 && j.Add[i] < 0 {
-					return bad("jump %d at %g s takes %g of species %d, more than the %g there; take away less, or use a Scale", x, t, -j.Add[i], i, e.y[c]-j.Add[i])
-				}
-			}
-		}
-	}
-	return nil
-}
-
-// piece sets sources, losses and rate constants for the piece from s.t to to.
-func (s *Solver) piece(p *Problem, to float64) error {
-	e := &s.e
-	mid := s.t + (to-s.t)/2
-	e.origin = s.t
-	e.sourced = false
-	clear(e.feed)
-	clear(e.out)
-	clear(e.jac)
-	if e.careful != nil {
-		e.kept = e.careful
-	}
-	if e.kept != nil {
-		clear(e.kept.jac)
-	}
-	e.careful, e.net = nil, e.plain
-	for _, f := range p.Feeds {
-		if f.From <= mid && mid < f.To {
-			e.feed[e.order.place[f.Species]] += f.Rate
-			e.sourced = true
-		}
-	}
-	for _, r := range p.Removals {
-		if r.From <= mid && mid < r.To {
-			e.out[e.order.place[r.Species]] += r.K
-			e.sourced = true
-		}
-	}
-	e.piece = 0
-	for _, c := range p.Rates.Corners() {
-		if c <= mid {
-			e.piece++
-		}
-	}
-	e.moving = !p.Rates.Held(e.piece)
-	e.ratesAt(0, false)
-	for i, k := range e.k {
-		if !finite(k) || k < 0 {
-			return bad("rate constant %d is %g at %g s; give finite constants, not below zero", i, k, s.t)
-		}
-	}
-	for i := range e.laws {
-		e.laws[i].begin(e)
-	}
-	s.stats.Restarts++
-	return nil
-}
+const tooShort = "the step has become too short for the clock"
 
 func (s *Solver) run(ctx context.Context, p *Problem, to float64, visit func(*Step) error) (stop bool, err error) {
 	e := &s.e
@@ -288,6 +220,16 @@ func (s *Solver) run(ctx context.Context, p *Problem, to float64, visit func(*St
 	tau := 0.0
 	e.prepare(0)
 	h := s.firstStep(span)
+	if s.multi != nil && len(p.Events) == 0 && e.sens == nil {
+		var done bool
+		if tau, h, done, err = s.runMulti(ctx, tau, span, to, h, visit); done || err != nil {
+			return false, err
+		}
+		if e.moving {
+			e.ratesAt(tau, false)
+		}
+		e.prepare(tau)
+	}
 	lnOld := 0.0 // logarithm of the error of the step before
 	order := float64(e.method.estimate)
 	rejected := false
@@ -310,10 +252,10 @@ func (s *Solver) run(ctx context.Context, p *Problem, to float64, visit func(*St
 			h = left / 2
 		}
 		if tau+h == tau || h < 1e-300 {
-			return false, s.stuck(h, "the step has become too short for the clock")
+			return false, s.stuck(h, tooShort)
 		}
 		size := math.Inf(1)
-		if e.factorise(s.sys, tau, h) {
+		if e.factorise(s.sys, tau, e.method.gamma*h) {
 			size = e.step(tau, h)
 		}
 		if size <= 1 && !e.conserve(tau+h) {

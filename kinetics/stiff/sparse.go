@@ -104,9 +104,15 @@ func (s *sparseLU) factor() bool {
 		}
 	}
 	s.loss = loss
+	// Rows right of the diagonal are divided by their pivots, so that in a
+	// solution no product has to wait for the sum before it.
 	last := 0.0
-	for _, x := range dinv {
+	for i, x := range dinv {
 		last += x * 0 // not a number when a pivot was zero or not finite
+		row := val[diag[i]+1 : rowAt[i+1]]
+		for j := range row {
+			row[j] *= x
+		}
 	}
 	return grown <= s.most && last == 0
 }
@@ -131,10 +137,10 @@ func (s *sparseLU) solve(b []float64) {
 		b[i] = x
 	}
 	for i := n - 1; i >= 0; i-- {
-		x := b[i]
+		x := b[i] * dinv[i]
 		for p, end := diag[i]+1, rowAt[i+1]; p < end; p++ {
 			x -= val[p] * b[cols[p]]
 		}
-		b[i] = x * dinv[i]
+		b[i] = x
 	}
 }

@@ -3,6 +3,11 @@
 // counts, in the form the harness beside the problems compares.
 //
 //	race -problems DIR/problems.json [-budget 50ms] [-monte-carlo=false] [NAME...]
+//	race -write-map DIR/problems.json
+//
+// The second form writes the problems of a map, one mechanism at many
+// temperatures, in the same form; run them with -points 60 to read each at
+// sixty times.
 package main
 
 import (
@@ -32,11 +37,13 @@ type problem struct {
 	Floor     float64
 	Exclude   bool
 	Reference []float64
-	Reactions []struct {
-		K        float64
-		LHS, RHS []int
-		Barrier  float64
-	}
+	Reactions []listed
+}
+
+type listed struct {
+	K        float64
+	LHS, RHS []int
+	Barrier  float64
 }
 
 type collection struct {
@@ -53,8 +60,16 @@ func main() {
 	mcRTol := flag.Float64("monte-carlo-rtol", 3e-5, "tolerance of the sampled problem; with the default the means are about as far from those at 1e-10 as the reference's at its 1e-6")
 	mcCount := flag.Int("monte-carlo-count", 0, "number of samples, instead of that of the problem")
 	repeat := flag.Int("repeat", 0, "only run each problem this many times, without timing: for a profiler")
+	points := flag.Int("points", 0, "times within each run at which the state is read")
+	toMap := flag.String("write-map", "", "write the problems of the map to this file, and stop")
 	flag.Parse()
-	if err := run(os.Stdout, *path, *budget, *rtols, *mc, *mcRTol, *mcCount, *repeat, flag.Args()); err != nil {
+	var err error
+	if *toMap != "" {
+		err = writeMap(*toMap)
+	} else {
+		err = run(os.Stdout, *path, *budget, *rtols, *mc, *mcRTol, *mcCount, *repeat, *points, flag.Args())
+	}
+	if err != nil {
 		fmt.Fprintln(os.Stderr, "race:", err)
 		os.Exit(1)
 	}
@@ -71,7 +86,7 @@ func read(path string, v any) error {
 	return nil
 }
 
-func run(w io.Writer, path string, budget time.Duration, rtols string, mc bool, mcRTol float64, mcCount, repeat int, names []string) error {
+func run(w io.Writer, path string, budget time.Duration, rtols string, mc bool, mcRTol float64, mcCount, repeat, points int, names []string) error {
 	var all collection
 	if err := read(path, &all); err != nil {
 		return err
@@ -115,7 +130,7 @@ func run(w io.Writer, path string, budget time.Duration, rtols string, mc bool, 
 				}
 				continue
 			}
-			if err := c.measure(w, rtol, budget); err != nil {
+			if err := c.measure(w, rtol, budget, points); err != nil {
 				return fmt.Errorf("%s: %w", p.Name, err)
 			}
 		}
@@ -192,13 +207,18 @@ type line struct {
 	Rebuilds    int     `json:"rebuilds"`
 }
 
-func (c *compiled) measure(w io.Writer, rtol float64, budget time.Duration) error {
+func (c *compiled) measure(w io.Writer, rtol float64, budget time.Duration, points int) error {
 	ctx := context.Background()
 	opt := c.options(rtol)
+	visit, begin := c.reader(points)
+	run := func(s *stiff.Solver) error {
+		begin()
+		return s.Run(ctx, &c.run, visit)
+	}
 	fresh := func() (*stiff.Solver, error) {
 		s, err := stiff.NewSolver(c.sys, opt)
 		if err == nil {
-			err = s.Run(ctx, &c.run, nil)
+			err = run(s)
 		}
 		return s, err
 	}
@@ -218,7 +238,7 @@ func (c *compiled) measure(w io.Writer, rtol float64, budget time.Duration) erro
 		out.Err = math.Max(out.Err, math.Abs(y[i]-r)/math.Max(math.Abs(r), c.Floor))
 	}
 	out.US, out.Q1, out.Q3, out.Repeats = sample(budget, func() { fresh() })
-	out.USNoSetup, out.NoSetupQ1, out.NoSetupQ3, out.RepeatsNo = sample(budget, func() { s.Run(ctx, &c.run, nil) })
+	out.USNoSetup, out.NoSetupQ1, out.NoSetupQ3, out.RepeatsNo = sample(budget, func() { run(s) })
 	return json.NewEncoder(w).Encode(out)
 }
 

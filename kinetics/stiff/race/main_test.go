@@ -20,7 +20,7 @@ func TestLines(t *testing.T) {
 		t.Fatal(err)
 	}
 	var out bytes.Buffer
-	if err := run(&out, path, 0, "1e-8", true, 1e-6, 0, 0, nil); err != nil {
+	if err := run(&out, path, 0, "1e-8", true, 1e-6, 0, 0, 0, nil); err != nil {
 		t.Fatal(err)
 	}
 	lines := bytes.Split(bytes.TrimSpace(out.Bytes()), []byte("\n"))
@@ -50,6 +50,37 @@ func TestLines(t *testing.T) {
 		}
 		if mc.Variant != want || mc.Count != 3 || mc.Failed != 0 || len(mc.Mean) != 2 {
 			t.Errorf("line %s", lines[1+i])
+		}
+	}
+}
+
+// TestMap writes the map, runs three temperatures of it at one tolerance and
+// reads each at sixty times.
+func TestMap(t *testing.T) {
+	names := []string{"map 250 K", "map 298 K", "map 368 K"}
+	path := filepath.Join(t.TempDir(), "problems.json")
+	if err := writeMap(path); err != nil {
+		t.Fatal(err)
+	}
+	var out bytes.Buffer
+	if err := run(&out, path, 0, "1e-6", true, 1e-6, 0, 0, 60, names); err != nil {
+		t.Fatal(err)
+	}
+	lines := bytes.Split(bytes.TrimSpace(out.Bytes()), []byte("\n"))
+	if len(lines) != len(names) {
+		t.Fatalf("%d lines, want %d", len(lines), len(names))
+	}
+	for _, l := range lines {
+		var d struct {
+			Problem, Status string
+			N               int
+			Err             float64
+		}
+		if err := json.Unmarshal(l, &d); err != nil {
+			t.Fatal(err)
+		}
+		if d.Status != "ok" || d.N != 10 || !(d.Err < 1e-4) {
+			t.Errorf("line %s", l)
 		}
 	}
 }
