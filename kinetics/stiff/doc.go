@@ -45,7 +45,8 @@
 // N) is kept by the method up to rounding. What rounding leaves is taken out
 // after each step by the smallest change, relative to each concentration, that
 // restores all sums; with feeds, the sums grow by exactly what is fed. A step
-// that breaks a sum by more than RTol is taken again, shorter.
+// that breaks a sum by more than RTol, and the absolute tolerances of its species,
+// is taken again, shorter.
 //
 // Concentrations below zero. A step that leaves one below -ATol (and below
 // rounding of the largest) is rejected and taken again, shorter. Smaller ones
