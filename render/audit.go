@@ -31,7 +31,7 @@ func (t Tally) String() string {
 	if claims == 0 {
 		return strings.Join(parts, ", ") + ", no claims"
 	}
-	return fmt.Sprintf("%s; of %s %d hold, %d fail, %d are undecided", strings.Join(parts, ", "), count(claims, "claim"), t.Holds, t.Fails, t.Undecided)
+	return fmt.Sprintf("%s; %s: %d held, %d failed, %d undecided", strings.Join(parts, ", "), count(claims, "claim"), t.Holds, t.Fails, t.Undecided)
 }
 
 func count(n int, what string) string {

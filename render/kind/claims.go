@@ -148,7 +148,8 @@ func (c claimSource) judge(i int, in Inputs) (Finding, *fault.Problem, error) {
 		return f, nil, err
 	}
 	if r.Value.Kind == Nothing {
-		f.Standing, f.Why = Fails, "the result has no number: "+r.Value.Text
+		f.Standing, f.Why = Undecided, "the result has no number: "+r.Value.Text
+		f.Value = "no value"
 		return f, nil, nil
 	}
 	x := r.Value.Value
@@ -196,7 +197,8 @@ func (c claimSource) slowed(i int, f *Finding, d Draws, holds bool, low, high fl
 // weigh adds the probability of a claim. Where two samplings exist the less
 // favourable one counts.
 func (c claimSource) weigh(f *Finding, d Draws, low, high float64) {
-	least, which := math.Inf(1), ""
+	least := math.Inf(1)
+	var each []string // the probability under each sampling, for the reader to see both
 	for _, one := range d.Cases {
 		in := 0
 		for _, x := range one.Values {
@@ -204,19 +206,22 @@ func (c claimSource) weigh(f *Finding, d Draws, low, high float64) {
 				in++
 			}
 		}
-		if p := float64(in) / float64(len(one.Values)); p < least {
-			least, which = p, one.Case.String()
-		}
+		p := float64(in) / float64(len(one.Values))
+		least = min(least, p)
+		each = append(each, fmt.Sprintf("%s with errors %s", probability(p), one.Case))
 	}
 	switch {
 	case d.None != "":
 		f.Why = d.None
 	case len(d.Cases) == 0:
-		f.Why = "no energy behind it has a ±"
+		f.Why = "nothing behind it has a ±"
 	case len(d.Exact) > 0:
-		f.Why = "these energies have no ±: " + listWords(d.Exact)
+		f.Why = "these have no ±: " + listWords(d.Exact)
 	default:
-		f.Probability, f.Why = probability(least), "errors "+which
+		f.Probability, f.Why = probability(least), strings.Join(each, ", ")
+		if len(each) == 1 {
+			f.Why = "errors " + d.Cases[0].Case.String()
+		}
 	}
 	if c.Probability == nil {
 		return

@@ -123,6 +123,9 @@ func (s *Study) Answer(r *content.Reading) (a Answer, d *fault.Diagnostic, pendi
 		return fail(err.Error(), err.(*NoResult).Fix, err)
 	}
 	text, err := res.Print(r.In)
+	if err == nil && res.Value.Kind == kind.Nothing && text != "none" {
+		text = "no value (" + text + ")" // in a sentence the reason alone would read as the value
+	}
 	if err != nil {
 		msg, fix := unitWords(err)
 		return fail(msg, fix, err)
