@@ -64,6 +64,7 @@ type board struct {
 	columns     map[int][]Rect // small boxes along curves and levels, by their place along x
 	solid       []Rect         // other text
 	soft        []Rect         // better kept clear of
+	heading     []Rect         // even better, though it can give way
 	left, right float64
 	labels      []*label
 }
@@ -331,4 +332,15 @@ func (b *board) covered(l *label, box Rect) bool {
 		}
 	}
 	return false
+}
+
+// overlaps counts the labels that stand at a place with an overlap.
+func (b *board) overlaps() int {
+	n := 0
+	for _, l := range b.labels {
+		if l.at < 0 || clashes(l, &l.choices[l.at], b.labels, 1) > 0 {
+			n++
+		}
+	}
+	return n
 }

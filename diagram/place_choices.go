@@ -31,6 +31,12 @@ func (b *board) places(out []choice, l *label, form int) []choice {
 				c.price += 2
 			}
 		}
+		for _, s := range b.heading {
+			if c.box.grown(12).meets(s) {
+				c.price += 10
+				break
+			}
+		}
 		if leader != nil {
 			if b.barred(*leader, l.bar) {
 				return

@@ -2,7 +2,6 @@ package diagram
 
 import (
 	"math"
-	"strings"
 
 	"saddlebook/diagram/axis"
 )
@@ -13,6 +12,18 @@ import (
 // States that paths have in common (the same name, value and text) are drawn
 // once. A path is told from another by colour, by dash and by its name at its
 // end. A state that follows another in any path stands to its right.
+//
+// A figure is as wide as wished; one narrower than 300 may have to become wider.
+// Its levels stand at least 92 apart, 69 in a figure of 540 or less. A profile
+// with more levels than its width holds is folded into rows of about equal
+// length: the last level of a row is also the first of the next. All rows have
+// one scale, so that heights compare, and each shows the part of it that its
+// levels need. Two sides that do not fit are drawn as two paths to the right
+// instead. A row so crowded that its names find no place shows numbers, and lists
+// the names below.
+//
+// No text is smaller than 12 units, shifted letters aside: 7 pt or more in a
+// column of 84 mm for a Width of up to 408.
 type Profile struct {
 	ID    string
 	Title string // default "Energy profile"
@@ -24,13 +35,21 @@ type Profile struct {
 	// Sides puts the common first state of exactly two paths in the middle, the
 	// first path to its left and the second to its right.
 	Sides bool
-	Width float64 // wished width of the figure, default 720; many states need more and get it
+	Width float64 // of the figure, default 720
+	// Barriers are measured by arrows from level to transition state, Span by an
+	// arrow between two points.
+	Barriers []ProfileBarrier
+	Span     *ProfileSpan
 }
 
 // ProfilePath is a row of points from a state to a state.
 type ProfilePath struct {
 	Name   string // needed unless it is the only path or ends in a state of its own
 	Points []ProfilePoint
+	// Variant is the Name of the path that this one is a variant of, such as the
+	// same states in another solvent. States of one name stand in one column, and
+	// the variant shows only its values.
+	Variant string
 }
 
 // ProfilePoint is a state, or a transition state between two states.
@@ -44,7 +63,12 @@ type ProfilePoint struct {
 	// It is moved aside by a few units only where it would cover another one.
 	Position float64
 	Text     string   // the value as printed; default Value to a fitting number of decimals
-	SD       *float64 // standard deviation in Unit, drawn as a band; nil: none
+	SD       *float64 // standard deviation in Unit, drawn as a band with whiskers; nil: none
+	// Again marks the last point of a path: its first state once more, after one
+	// turn of a catalytic cycle. An arrow measures the turn. Name and Label default
+	// to those of the first point.
+	Again   bool
+	Picture *Picture // shown with the label; nil: none
 }
 
 const maxPaths = 8 // as many as there are dashes
@@ -71,11 +95,7 @@ func (p Profile) Scene() (Scene, error) {
 	if err != nil {
 		return Scene{}, err
 	}
-	if p.Desc == "" {
-		p.Desc = p.words()
-	}
-	l := layout{p: p, net: n}
-	return l.scene(), nil
+	return p.drawn(n)
 }
 
 func (p Profile) check() error {
@@ -92,19 +112,27 @@ func (p Profile) check() error {
 			return refuse("give it two states or more", "path %s has %d points", path.called(i), len(path.Points))
 		}
 		for k, q := range path.Points {
+			if f := pictureFault(q, p.Width); f != nil {
+				return f
+			}
 			switch {
-			case q.key() == "":
+			case q.key() == "" && !(q.Again && path.Points[0].key() != ""):
 				return refuse("name it", "point %d of path %s has no name", k+1, path.called(i))
 			case !(math.Abs(q.Value) <= 1e12):
 				return refuse("use values within ±1e12 of the zero, or a larger unit", "%q of path %s has the value %g", q.key(), path.called(i), q.Value)
 			case q.SD != nil && !(*q.SD >= 0 && *q.SD <= 1e12):
-				return refuse("use 0 or more", "%q of path %s has the standard deviation %g", q.key(), path.called(i), *q.SD)
+				return refuse("use 0 to 1e12", "%q of path %s has the standard deviation %g", q.key(), path.called(i), *q.SD)
 			case q.Peak && !math.IsNaN(q.Position) && !(q.Position >= 0 && q.Position <= 1):
 				return refuse("use 0 to 1", "%q of path %s has the position %g", q.key(), path.called(i), q.Position)
 			case q.Peak && (k == 0 || k == len(path.Points)-1 || path.Points[k-1].Peak):
 				return refuse("put a state on either side of it", "the transition state %q of path %s does not stand between two states", q.key(), path.called(i))
+			case q.Again && (k < 2 || k != len(path.Points)-1):
+				return refuse("mark only the last point of a cycle", "%q of path %s is marked as the first state again, and is not the last of three points or more", q.key(), path.called(i))
 			}
 		}
+	}
+	if err := p.checkVariants(); err != nil {
+		return err
 	}
 	if p.Sides {
 		if a, b := p.Paths[0].Points[0], p.Paths[1].Points[0]; !a.same(b) {
@@ -145,74 +173,4 @@ func (q ProfilePoint) shown() string {
 		return q.Label
 	}
 	return q.Name
-}
-
-// complete prints the values that come without a text, all to the same decimals.
-func (p *Profile) complete() {
-	low, high := p.extent()
-	decimals := 1
-	switch span := high - low; {
-	case span >= 300:
-		decimals = 0
-	case span > 0:
-		decimals = min(6, max(1, 1-int(math.Floor(math.Log10(span/3)))))
-	}
-	paths := make([]ProfilePath, len(p.Paths))
-	for i, path := range p.Paths {
-		paths[i] = ProfilePath{path.Name, append([]ProfilePoint{}, path.Points...)}
-		for k := range path.Points {
-			q := &paths[i].Points[k]
-			if q.Text == "" {
-				q.Text = axis.Text(q.Value, decimals)
-			}
-			if q.SD != nil && !strings.Contains(q.Text, "±") {
-				q.Text += " ± " + axis.Text(*q.SD, decimals)
-			}
-		}
-	}
-	p.Paths = paths
-}
-
-// extent is the range of the values with their deviations.
-func (p Profile) extent() (low, high float64) {
-	low, high = math.Inf(1), math.Inf(-1)
-	for _, path := range p.Paths {
-		for _, q := range path.Points {
-			sd := 0.0
-			if q.SD != nil {
-				sd = *q.SD
-			}
-			low, high = math.Min(low, q.Value-sd), math.Max(high, q.Value+sd)
-		}
-	}
-	return low, high
-}
-
-// words tells the profile to those who do not see it.
-func (p Profile) words() string {
-	var b strings.Builder
-	for i, path := range p.Paths {
-		if i > 0 {
-			b.WriteByte(' ')
-		}
-		if path.Name != "" {
-			b.WriteString(path.Name + ": ")
-		}
-		for k, q := range path.Points {
-			switch {
-			case k == 0:
-				b.WriteString("from ")
-			case q.Peak:
-				b.WriteString(" over ")
-			default:
-				b.WriteString(" to ")
-			}
-			b.WriteString(q.shown() + " (" + q.Text + ")")
-		}
-		b.WriteByte('.')
-	}
-	if p.Unit != "" {
-		b.WriteString(" " + p.Axis + " in " + p.Unit + ".")
-	}
-	return b.String()
 }

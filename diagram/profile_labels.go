@@ -3,6 +3,7 @@ package diagram
 import (
 	"math"
 
+	"saddlebook/diagram/axis"
 	"saddlebook/diagram/lettering"
 )
 
@@ -10,6 +11,7 @@ import (
 type block struct {
 	lines []textLine
 	w, h  float64
+	above *Picture // over the lines
 }
 
 type textLine struct {
@@ -33,6 +35,10 @@ func (b *block) add(role Role, runs []lettering.Run, size float64) {
 // at sets the block with its top left corner at x, y.
 func (b *block) at(x, y float64, align Anchor) []Mark {
 	var marks []Mark
+	if b.above != nil {
+		marks = append(marks, b.above.At(x+(b.w-b.above.Width)*float64(align)/2, y))
+		y += b.above.Height + pictureGap
+	}
 	for _, t := range b.lines {
 		marks = append(marks, Words{
 			Role: t.role, X: x + b.w*float64(align)/2, Y: y + t.y,
@@ -42,7 +48,10 @@ func (b *block) at(x, y float64, align Anchor) []Mark {
 	return marks
 }
 
-const widestName = 160.0
+const (
+	widestName = 160.0
+	pictureGap = 3.0 // between a picture and the name under it
+)
 
 // block is the name of a state over its value. A word is parted only where it is
 // wider than any name may be.
@@ -51,12 +60,24 @@ func (l *layout) block(s *state) *block {
 		return s.block
 	}
 	var b block
+	if n := l.numbers[s]; n > 0 {
+		b.add("name", lettering.Plain(axis.Text(float64(n), 0)), nameSize)
+		s.block = &b
+		return &b
+	}
 	name := s.point.shown()
+	if s.twin != nil {
+		name = "" // it stands at the state that this one varies
+	}
 	for _, line := range lettering.Wrap(name, nameSize, math.Max(l.wrap, math.Min(widestName, lettering.Widest(name, nameSize)))) {
 		b.add("name", line, nameSize)
 	}
 	for _, line := range lettering.Wrap(s.point.Text, valueSize, math.Max(l.wrap, 96)) {
 		b.add("value", line, valueSize)
+	}
+	if p := s.point.Picture; p != nil && s.twin == nil {
+		b.above = p
+		b.w, b.h = math.Max(b.w, p.Width), b.h+p.Height+pictureGap
 	}
 	s.block = &b
 	return &b
@@ -64,7 +85,7 @@ func (l *layout) block(s *state) *block {
 
 // inOneLine sets a short name and its value side by side, for narrow places.
 func (b *block) inOneLine() (form, bool) {
-	if len(b.lines) != 2 || b.lines[0].w+b.lines[1].w > widestName {
+	if len(b.lines) != 2 || b.above != nil || b.lines[0].w+b.lines[1].w > widestName {
 		return form{}, false
 	}
 	const gap = 7
@@ -83,7 +104,19 @@ func (b *block) inOneLine() (form, bool) {
 // named reports whether the name of path i is shown: not when it is the only one
 // and not when its last state says the same.
 func (l *layout) named(i int) bool {
-	path := l.p.Paths[i]
+	path, route := l.p.Paths[i], l.net.routes[i]
+	if len(route) == 0 {
+		return false
+	}
+	if !l.net.ends && len(l.p.Paths) > 1 && path.Name != "" {
+		// A row that goes on names what is told apart in it.
+		for _, t := range route {
+			if len(t.paths) == 1 {
+				return true
+			}
+		}
+		return false
+	}
 	return len(l.p.Paths) > 1 && path.Name != "" && path.Name != path.Points[len(path.Points)-1].shown()
 }
 
@@ -184,31 +217,24 @@ func (l *layout) spots(i int, route []*stretch) []Rect {
 	return out
 }
 
-// shift moves marks.
-func shift(marks []Mark, dx, dy float64) []Mark {
-	out := make([]Mark, len(marks))
-	for i, m := range marks {
-		switch m := m.(type) {
-		case Line:
-			out[i] = Line{m.Role, m.X1 + dx, m.Y1 + dy, m.X2 + dx, m.Y2 + dy}
-		case Curve:
-			path := make([]Command, len(m.Path))
-			for k, c := range m.Path {
-				path[k] = Command{c.Op, c.X1 + dx, c.Y1 + dy, c.X2 + dx, c.Y2 + dy, c.X + dx, c.Y + dy}
-			}
-			out[i] = Curve{m.Role, path}
-		case Box:
-			m.X, m.Y = m.X+dx, m.Y+dy
-			out[i] = m
-		case Dot:
-			m.X, m.Y = m.X+dx, m.Y+dy
-			out[i] = m
-		case Words:
-			m.X, m.Y = m.X+dx, m.Y+dy
-			out[i] = m
-		case Group:
-			out[i] = Group{m.Role, shift(m.Marks, dx, dy)}
+// pictureFault says why the picture of a point cannot be shown in a figure of
+// some width.
+func pictureFault(q ProfilePoint, width float64) error {
+	p := q.Picture
+	if p == nil {
+		return nil
+	}
+	most := width - 100 // the axis and some air
+	if !(p.Width > 0 && p.Height > 0 && p.Width <= most && p.Height <= 1000) {
+		return refuse("make it smaller or the figure wider", "the picture at %q is %g by %g, and a figure %g wide has room for one of up to %g by 1000", q.key(), p.Width, p.Height, width, most)
+	}
+	for _, m := range p.Marks {
+		if b := m.Bounds(); !(b.X0 >= -0.01 && b.Y0 >= -0.01 && b.X1 <= p.Width+0.01 && b.Y1 <= p.Height+0.01) {
+			return refuse("keep its marks inside its frame", "the picture at %q has a mark outside its frame of %g by %g", q.key(), p.Width, p.Height)
 		}
 	}
-	return out
+	return nil
 }
+
+// shift moves marks.
+func shift(marks []Mark, dx, dy float64) []Mark { return moved(marks, dx, dy) }

@@ -3,10 +3,8 @@ package diagram
 import (
 	"fmt"
 	"math"
-	"sort"
 
 	"saddlebook/diagram/axis"
-	"saddlebook/diagram/lettering"
 )
 
 // Sizes of text and space, in SVG user units.
@@ -16,36 +14,136 @@ const (
 	tickSize  = 12.0
 	margin    = 8.0 // around the figure
 	leastStep = 92.0
+	rowGap    = 24.0
 )
 
-// layout turns a net into a scene.
-type layout struct {
-	p     Profile
-	net   *net
-	scale axis.Scale
+// ruling is the value scale that all rows of a profile share.
+type ruling struct {
 	ticks []float64
 	text  []string // of the ticks
-	step  float64  // from column to column
-	left  float64  // of the value axis
-	right float64  // end of the figure
-	wrap  float64  // widest line of a name
-	board board
+	tall  float64  // height of a unit of value
+	low   float64
+	high  float64 // ends of the scale
+	left  float64 // of the value axis
 }
 
-func (l *layout) scene() Scene {
-	l.rule()
-	l.columns()
+// layout turns a net, or a row of one, into marks.
+type layout struct {
+	ruling
+	p        Profile
+	net      *net
+	whole    *net // of which net is a row, or net itself
+	scale    axis.Scale
+	ease     float64 // how much more room than usual it gets
+	least    float64 // least step
+	step     float64 // from column to column
+	tight    int     // what the outer columns give up for want of room
+	start    float64 // of the first column
+	after    float64 // room behind the last column
+	right    float64 // end of the figure
+	wrap     float64 // widest line of a name
+	measures []measure
+	numbers  map[*state]int // instead of names; nil: none
+	board    board
+}
+
+// drawn lays the net out in one row, or in several if it does not fit. Where
+// labels find no places without overlap, it is tried again with more room.
+func (p Profile) drawn(n *net) (Scene, error) {
+	all, err := p.measures(n)
+	if err != nil {
+		return Scene{}, err
+	}
+	if p.Desc == "" {
+		p.Desc = p.words(all)
+	}
+	var best []Mark
+	least := math.MaxInt
+	for _, try := range []struct {
+		ease     float64
+		numbered bool
+	}{{1, false}, {1.25, false}, {1.6, false}, {1.25, true}, {1.6, true}, {2, true}, {2.5, true}} {
+		whole := layout{p: p, net: n, whole: n, measures: all, ease: try.ease}
+		whole.rule(1)
+		cuts := whole.cuts()
+		if p.Sides && !whole.fits() {
+			q := p
+			q.Sides = false
+			if m, err := q.net(); err == nil { // else both sides are the same
+				return q.drawn(m)
+			}
+		}
+		marks, clashes := whole.rows(cuts, try.numbered)
+		if clashes < least {
+			best, least = marks, clashes
+		}
+		if clashes == 0 {
+			break
+		}
+	}
+	return frame(p.ID, p.Title, p.Desc, p.Width, best), nil
+}
+
+// rows draws the rows between cuts, one under the other, and counts the labels
+// that found no place without overlap. numbers: rows with such labels show
+// numbers instead of names.
+func (l *layout) rows(cuts []int, numbers bool) (marks []Mark, clashes int) {
+	rows := []*net{l.net}
+	if len(cuts) > 2 {
+		l.rule(0.75)
+		rows = l.net.fold(cuts, l.tall)
+	}
+	var lines []*layout
+	step := math.Inf(1)
+	for _, row := range rows {
+		r := &layout{ruling: l.ruling, p: l.p, net: row, whole: l.net, ease: l.ease}
+		r.mine(l.measures)
+		r.crop()
+		step = math.Min(step, r.measureStep())
+		lines = append(lines, r)
+	}
+	bottom := 0.0
+	for i, r := range lines {
+		again := *r
+		r.stand(step)
+		row := r.row()
+		if numbers && r.board.overlaps() > 0 {
+			r = &again
+			r.numbered()
+			r.stand(step)
+			row = r.row()
+			row = append(row, r.key(bounds(row).Y1+12)...)
+		}
+		clashes += r.board.overlaps()
+		if i > 0 {
+			row = moved(row, 0, bottom+rowGap-bounds(row).Y0)
+		}
+		bottom = bounds(row).Y1
+		marks = append(marks, row...)
+	}
+	return marks, clashes
+}
+
+// row draws one row.
+func (l *layout) row() []Mark {
 	l.peaks()
-	for _, s := range l.net.stretches {
-		l.slopes(s)
+	for _, t := range l.net.stretches {
+		t.trace = nil
+		l.slopes(t)
 	}
 	curves := l.curves()
 	bars := l.bars()
+	seams := l.seams()
 	axisMarks := l.axis()
+	heading := l.heading()
+	arrows := l.arrows()
 	l.labels()
 	l.board.place()
 
 	marks := append(l.zero(), axisMarks...)
+	marks = append(marks, l.lifted(heading)...)
+	marks = append(marks, seams...)
+	marks = append(marks, arrows...)
 	marks = append(marks, curves...)
 	marks = append(marks, bars...)
 	for _, b := range l.board.labels {
@@ -55,7 +153,7 @@ func (l *layout) scene() Scene {
 		}
 		marks = append(marks, Group{Role: "label", Marks: b.forms[c.form].make(c.box.X0, c.box.Y0, c.align)})
 	}
-	return frame(l.p.ID, l.p.Title, l.p.Desc, l.p.Width, marks)
+	return marks
 }
 
 // frame moves marks so that they stand inside a frame, and makes it at least as
@@ -69,15 +167,19 @@ func frame(id, title, desc string, width float64, marks []Mark) Scene {
 	dy := margin - all.Y0
 	return Scene{
 		ID: id, Title: title, Desc: desc,
-		Width:  math.Ceil(math.Max(width, all.X1+dx+margin)),
+		Width:  math.Ceil(math.Max(width, all.X1+dx+margin) - 1e-6), // less rounding
 		Height: math.Ceil(all.Y1 + dy + margin),
-		Marks:  shift(marks, dx, dy),
+		Marks:  moved(marks, dx, dy),
 	}
 }
 
-// rule chooses the value scale.
-func (l *layout) rule() {
+// rule chooses the value scale of the whole profile. share is how much of the
+// usual height it gets.
+func (l *layout) rule(share float64) {
 	low, high := l.p.extent()
+	for _, m := range l.measures {
+		low, high = math.Min(low, math.Min(m.low, m.high)), math.Max(high, math.Max(m.low, m.high))
+	}
 	if low > 0 && low < 0.3*(high-low) {
 		low = 0
 	}
@@ -85,9 +187,6 @@ func (l *layout) rule() {
 		high = 0
 	}
 	height := math.Min(330, math.Max(200, 0.42*l.p.Width))
-	if wide := leastStep*float64(l.net.last-l.net.first) - l.p.Width; wide > 0 {
-		height += math.Min(150, 0.15*wide)
-	}
 	crowd := map[int]int{}
 	for _, s := range l.net.states {
 		if !s.point.Peak {
@@ -97,157 +196,62 @@ func (l *layout) rule() {
 			}
 		}
 	}
+	height *= share * l.ease
 	var decimals int
 	l.ticks, decimals = axis.Ticks(low, high, 6)
+	l.text = nil
 	for _, v := range l.ticks {
 		l.text = append(l.text, axis.Text(v, decimals))
 	}
-	l.scale = axis.Scale{Low: l.ticks[0], High: l.ticks[len(l.ticks)-1], From: height, To: 0}
+	l.left = margin + widestTick(l.text) + 9
+	l.tall = height / (l.ticks[len(l.ticks)-1] - l.ticks[0])
+	l.end(low, high)
+	l.heights()
+}
+
+// crop keeps the part of the scale that a row needs.
+func (l *layout) crop() {
+	if l.net != l.whole {
+		low, high := math.Inf(1), math.Inf(-1)
+		for _, s := range l.net.states {
+			low, high = math.Min(low, s.point.Value-s.point.sd()), math.Max(high, s.point.Value+s.point.sd())
+		}
+		for _, m := range l.measures {
+			low, high = math.Min(low, math.Min(m.low, m.high)), math.Max(high, math.Max(m.low, m.high))
+		}
+		l.end(low, high)
+	}
+	l.heights()
+}
+
+// end keeps the part of the scale from low to high. It ends at a tick, or just
+// beyond the last value where that leaves less room unused.
+func (l *layout) end(low, high float64) {
+	first, last := 0, len(l.ticks)-1
+	for first+1 < last && l.ticks[first+1] <= low {
+		first++
+	}
+	for last-1 > first && l.ticks[last-1] >= high {
+		last--
+	}
+	l.low, l.high = l.ticks[first], l.ticks[last]
+	step := l.ticks[1] - l.ticks[0]
+	const most, beyond = 0.5, 0.1 // of a step
+	if last-first > 1 && low-l.low > most*step {
+		first, l.low = first+1, low-beyond*step
+	}
+	if last-first > 1 && l.high-high > most*step {
+		last, l.high = last-1, high+beyond*step
+	}
+	l.ticks, l.text = l.ticks[first:last+1], l.text[first:last+1]
+}
+
+// heights stands all states on the scale.
+func (l *layout) heights() {
+	l.scale = axis.Scale{Low: l.low, High: l.high, From: (l.high - l.low) * l.tall, To: 0}
 	for _, s := range l.net.states {
 		s.y = l.scale.At(s.point.Value)
-		if s.point.SD != nil {
-			s.band = math.Abs(l.scale.At(*s.point.SD) - l.scale.At(0))
-		}
-	}
-}
-
-// columns chooses the places of columns along x. A gap that several peaks share
-// is wider than others.
-func (l *layout) columns() {
-	tick := 0.0
-	for _, t := range l.text {
-		tick = math.Max(tick, lettering.Width(lettering.Plain(t), tickSize))
-	}
-	l.left = margin + tick + 9
-	at := l.offsets()
-	total := at[len(at)-1]
-	l.clumps()
-	l.step = math.Max(leastStep, (l.p.Width-l.left-140)/total)
-	l.wrap = math.Min(150, math.Max(74, l.step*0.86))
-	var first, after float64
-	for range 4 { // bars, and so the room they need, depend on the step
-		first, after = l.left+12+l.reach(l.net.first), l.reach(l.net.last)
-		l.step = math.Max(leastStep, (l.p.Width-margin-after-first)/total)
-	}
-	l.right = first + total*l.step + after
-	for _, s := range l.net.states {
-		s.half = l.half(s)
-		s.x = first + at[s.column-l.net.first]*l.step + l.aside(s)
-	}
-	l.board.left, l.board.right = l.left+6, math.Max(l.right, l.p.Width-margin)
-}
-
-// offsets gives the place of each column in steps from the first.
-func (l *layout) offsets() []float64 {
-	peaks := make([]float64, l.net.last-l.net.first+1) // over the gap before each column
-	for _, t := range l.net.stretches {
-		from, to := min(t.from.column, t.to.column), max(t.from.column, t.to.column)
-		for c := from + 1; c <= to && t.peak != nil; c++ {
-			peaks[c-l.net.first]++
-		}
-	}
-	at := make([]float64, len(peaks))
-	for i := 1; i < len(at); i++ {
-		at[i] = at[i-1] + 1 + 0.3*math.Min(4, math.Max(0, peaks[i]-1))
-	}
-	return at
-}
-
-// reach is how far the levels of an outer column, their names and the names of
-// the paths that end there stand out from the middle of the column.
-func (l *layout) reach(column int) float64 {
-	out := 0.0
-	for _, s := range l.net.states {
-		if s.point.Peak || s.column != column {
-			continue
-		}
-		r := math.Max(l.block(s).w/2+4, l.half(s)+4)
-		for i, route := range l.net.routes {
-			if route[len(route)-1].to == s && l.named(i) {
-				r = math.Max(r, math.Max(l.half(s), l.block(s).w/2)+l.pathName(i).w+13)
-			}
-		}
-		out = math.Max(out, math.Abs(l.aside(s))+r)
-	}
-	return out
-}
-
-// clumps finds the levels of one column that would cover each other: they stand
-// side by side.
-func (l *layout) clumps() {
-	columns := map[int][]*state{}
-	for _, s := range l.net.states {
-		if !s.point.Peak {
-			columns[s.column] = append(columns[s.column], s)
-		}
-	}
-	for _, group := range columns {
-		sort.SliceStable(group, func(i, k int) bool { return group[i].y < group[k].y })
-		for i := 0; i < len(group); {
-			k := i + 1
-			for k < len(group) && group[k].y-group[k-1].y < 8 {
-				k++
-			}
-			clump := append([]*state{}, group[i:k]...)
-			sort.SliceStable(clump, func(a, b int) bool { return clump[a].paths[0] < clump[b].paths[0] })
-			for m, s := range clump {
-				s.clump, s.slot = float64(k-i), float64(m)-float64(k-i-1)/2
-			}
-			i = k
-		}
-	}
-}
-
-// half is half the width of a level.
-func (l *layout) half(s *state) float64 {
-	h := math.Min(27, math.Max(13, 0.17*l.step))
-	if s.clump > 1 {
-		h = math.Min(h, math.Max(5, (0.6*l.step/s.clump-6)/2))
-	}
-	return h
-}
-
-// aside is how far a level of a clump stands from the middle of its column.
-func (l *layout) aside(s *state) float64 { return s.slot * (2*l.half(s) + 6) }
-
-// peaks stands each at its position between its levels. Peaks that would cover
-// each other are made narrow and set side by side.
-func (l *layout) peaks() {
-	var peaks []*state
-	for _, t := range l.net.stretches {
-		p := t.peak
-		if p == nil {
-			continue
-		}
-		start, end := t.from.x+t.dir*t.from.half, t.to.x-t.dir*t.to.half
-		gap := math.Abs(end - start)
-		p.half = math.Min(13, math.Max(5, gap*0.09))
-		flank := math.Max(0.14*gap, 8) + p.half
-		room := math.Max(0, gap-2*flank)
-		p.x = start + t.dir*((gap-room)/2+p.position()*room)
-		p.low, p.high = math.Min(start, end)+7, math.Max(start, end)-7
-		peaks = append(peaks, p)
-	}
-	used := map[*state]bool{}
-	for i, p := range peaks {
-		clump, sum := []*state{p}, p.x
-		for _, q := range peaks[i+1:] {
-			if !used[p] && !used[q] && math.Abs(q.y-p.y) < 5 && math.Abs(q.x-p.x) < p.half+q.half+3 {
-				clump, sum = append(clump, q), sum+q.x
-				used[q] = true
-			}
-		}
-		if len(clump) == 1 {
-			continue
-		}
-		sort.SliceStable(clump, func(a, b int) bool { return clump[a].x < clump[b].x })
-		n, low, high := float64(len(clump)), p.low, p.high
-		half := math.Max(2.5, math.Min(8, (high-low)/n/2-2))
-		for k, q := range clump {
-			q.half = half
-			x := sum/n + (float64(k)-(n-1)/2)*(2*half+4)
-			q.x = math.Max(q.low+half, math.Min(q.high-half, x))
-		}
+		s.band = math.Abs(l.scale.At(s.point.sd()) - l.scale.At(0))
 	}
 }
 
@@ -270,7 +274,7 @@ func (l *layout) slopes(t *stretch) {
 
 // style is the role of what these paths share.
 func (l *layout) style(base string, paths []int) Role {
-	if len(paths) > 1 {
+	if b := l.p.inkBase(); len(paths) > 1 || paths[0] == b {
 		return Role(base)
 	}
 	return Role(fmt.Sprintf("%s path-%d", base, paths[0]+1))
@@ -341,12 +345,20 @@ func (l *layout) rise(t *stretch, x0, y0, x1, y1 float64) Command {
 func (l *layout) bars() []Mark {
 	var bands, marks []Mark
 	for _, s := range l.net.states {
+		if s.pass {
+			continue
+		}
 		base, thick := "level", 1.5
 		if s.point.Peak {
 			base, thick = "peak", 1.125
 		}
 		if s.band > 0 {
 			bands = append(bands, Box{Role: "spread", X: s.x - s.half, Y: s.y - s.band, W: 2 * s.half, H: 2 * s.band})
+			cap := math.Min(5, 0.6*s.half)
+			marks = append(marks,
+				Line{Role: "whisker", X1: s.x, Y1: s.y - s.band, X2: s.x, Y2: s.y + s.band},
+				Line{Role: "whisker", X1: s.x - cap, Y1: s.y - s.band, X2: s.x + cap, Y2: s.y - s.band},
+				Line{Role: "whisker", X1: s.x - cap, Y1: s.y + s.band, X2: s.x + cap, Y2: s.y + s.band})
 		}
 		marks = append(marks, Line{Role: l.style(base, s.paths), X1: s.x - s.half, Y1: s.y, X2: s.x + s.half, Y2: s.y})
 		l.board.stroke(s.rect(thick))

@@ -12,6 +12,8 @@ type net struct {
 	routes    [][]*stretch // per path
 	first     int          // lowest column
 	last      int
+	begins    bool // not the continuation of another row
+	ends      bool // no row follows
 }
 
 // state is a level or a peak with its place.
@@ -26,6 +28,9 @@ type state struct {
 	low, high   float64 // of a peak: the room in its gap
 	up, down    bool    // a curve leaves it upwards, downwards
 	clump, slot float64 // how many levels stand side by side, and which this is, from the middle
+	of          *state  // in a row: the state of the whole net
+	twin        *state  // of a variant: the state that it varies
+	pass        bool    // no state: a place where a curve goes on in another row
 }
 
 // stretch leads from a level to the next, over a peak or over none.
@@ -39,11 +44,12 @@ type stretch struct {
 // net joins what paths have in common and gives every level its column.
 func (p Profile) net() (*net, error) {
 	n := p.join(false)
+	p.twins(n)
 	if !n.columns(p.Sides) {
 		// The paths run through common states in different order. Only states at the
 		// same place in their paths can then be drawn once.
 		n = p.join(true)
-		n.columns(p.Sides)
+		n.columns(p.Sides) // cannot fail: every level stands at its number
 	}
 	for i, route := range n.routes {
 		for j, other := range n.routes[:i] {
@@ -73,7 +79,7 @@ func alike(a, b []*stretch) bool {
 // join makes the states and stretches. strict: only states with the same number
 // of levels before them are one.
 func (p Profile) join(strict bool) *net {
-	n := &net{}
+	n := &net{begins: true, ends: true}
 	levels := map[string]*state{}
 	legs := map[string]*stretch{}
 	number := map[*state]int{}
@@ -155,6 +161,11 @@ func (n *net) columns(sides bool) bool {
 		for _, s := range n.stretches {
 			if s.to.column < s.from.column+1 {
 				s.to.column, moved = s.from.column+1, true
+			}
+		}
+		for _, s := range n.states {
+			if t := s.twin; t != nil && !s.point.Peak && s.column != t.column {
+				s.column, t.column, moved = max(s.column, t.column), max(s.column, t.column), true
 			}
 		}
 		if !moved {

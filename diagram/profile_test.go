@@ -15,7 +15,9 @@ func ts(name string, v, at float64) ProfilePoint {
 	return ProfilePoint{Name: name, Value: v, Peak: true, Position: at}
 }
 
-func path(name string, points ...ProfilePoint) ProfilePath { return ProfilePath{name, points} }
+func path(name string, points ...ProfilePoint) ProfilePath {
+	return ProfilePath{Name: name, Points: points}
+}
 
 func laidOut(t *testing.T, p Profile) (Scene, inked) {
 	t.Helper()
@@ -29,6 +31,7 @@ func laidOut(t *testing.T, p Profile) (Scene, inked) {
 func TestProfileRefuses(t *testing.T) {
 	nan, sd := math.NaN(), -1.0
 	two := path("a", st("R", 0), st("P", 1))
+	over := path("o", st("R", 0), ts("T", 5, 0.5), st("P", 1))
 	for _, tt := range []struct {
 		p   Profile
 		msg string
@@ -48,6 +51,19 @@ func TestProfileRefuses(t *testing.T) {
 		{Profile{Paths: []ProfilePath{two, two}}, `paths "a" and "a" run through the same states`},
 		{Profile{Paths: []ProfilePath{two, path("", st("R", 0), st("I", 4), st("P", 1))}}, `path 2 ends in the state "P" of another path`},
 		{Profile{Paths: make([]ProfilePath, 9)}, "9 paths"},
+		{Profile{Paths: []ProfilePath{path("a", st("R", 0), ProfilePoint{Name: "R", Again: true})}}, `"R" of path "a" is marked as the first state again`},
+		{Profile{Paths: []ProfilePath{two, {Name: "v", Variant: "x", Points: two.Points}}}, `path "v" is a variant of "x"`},
+		{Profile{Paths: []ProfilePath{{Name: "a", Variant: "a", Points: two.Points}}}, `path "a" is a variant of "a"`},
+		{Profile{Paths: []ProfilePath{two, {Variant: "a", Points: two.Points}}}, `path 2 is a variant of "a" and has no name`},
+		{Profile{Sides: true, Paths: []ProfilePath{two, {Name: "b", Variant: "a", Points: two.Points}}}, `two-sided profile with a variant`},
+		{Profile{Paths: []ProfilePath{over}, Barriers: []ProfileBarrier{{Peak: "U"}}}, `no transition state "U"`},
+		{Profile{Paths: []ProfilePath{over}, Barriers: []ProfileBarrier{{Path: "x", Peak: "T"}}}, `no path "x"`},
+		{Profile{Paths: []ProfilePath{over}, Barriers: []ProfileBarrier{{Peak: "T"}, {Peak: "T"}}}, `the barrier of "T" is to be measured twice`},
+		{Profile{Paths: []ProfilePath{over}, Span: &ProfileSpan{From: "R", To: "Q"}}, `no path runs through "R" and "Q"`},
+		{Profile{Paths: []ProfilePath{over}, Span: &ProfileSpan{From: "T", To: "R"}}, `"R" stands before "T", and path "o" is no cycle`},
+		{Profile{Paths: []ProfilePath{path("a", st("R", 0), ProfilePoint{Name: "P", Picture: &Picture{Width: 700, Height: 10}})}}, `the picture at "P" is 700 by 10`},
+		{Profile{Paths: []ProfilePath{path("a", st("R", 0), ProfilePoint{Name: "P", Picture: &Picture{Width: 70, Height: nan}})}}, `the picture at "P" is 70 by NaN`},
+		{Profile{Paths: []ProfilePath{path("a", st("R", 0), ProfilePoint{Name: "P", Picture: &Picture{Width: 70, Height: 10, Marks: []Mark{Line{Role: "axis", X2: 71}}}})}}, `has a mark outside its frame`},
 		{Profile{Width: 10, Paths: []ProfilePath{two}}, "cannot be 10 wide"},
 	} {
 		_, err := tt.p.Scene()
@@ -203,10 +219,10 @@ func TestShiftOfZero(t *testing.T) {
 
 func TestDefaultsInWords(t *testing.T) {
 	s, k := laidOut(t, Profile{ID: "x", Unit: "kcal/mol", Zero: "R + X", Paths: []ProfilePath{path("cold", st("R", 0), ts("T", 13.84, 0.5), st("P", -5))}})
-	if want := "cold: from R (0.0) over T (13.8) to P (−5.0). ΔG in kcal/mol."; s.Title != "Energy profile" || s.Desc != want {
+	if want := "Highest transition state T at 13.8 kcal/mol, lowest point P at −5.0 kcal/mol. cold: from R (0.0) over T (13.8) to P (−5.0)."; s.Title != "Energy profile" || s.Desc != want {
 		t.Errorf("title %q, description %q, want %q", s.Title, s.Desc, want)
 	}
-	for _, want := range []string{"ΔG / kcal mol−1", "relative to R + X", "T 13.8"} {
+	for _, want := range []string{"ΔG / kcal mol−1 relative to R + X", "T 13.8"} {
 		found := false
 		for _, text := range k.texts {
 			found = found || text == want

@@ -19,7 +19,7 @@ type Scene struct {
 // words of a to z, 0 to 9 and hyphens.
 type Role string
 
-// Mark is a Line, Curve, Box, Dot, Words or Group.
+// Mark is a Line, Curve, Box, Dot, Words, Image or Group.
 type Mark interface {
 	// Bounds is the smallest upright rectangle around the mark, line widths left out.
 	Bounds() Rect
@@ -202,6 +202,9 @@ func (s Scene) check(marks []Mark, fix string) error {
 		if !(b.X0 >= -slack && b.Y0 >= -slack && b.X1 <= s.Width+slack && b.Y1 <= s.Height+slack) {
 			return refuse(fix, "the figure %q has a %T at %.6g, %.6g to %.6g, %.6g, outside its frame of %g by %g",
 				s.ID, m, b.X0, b.Y0, b.X1, b.Y1, s.Width, s.Height)
+		}
+		if x, ok := m.(Image); ok && (!(x.W > 0 && x.H > 0) || len(x.Data) == 0 || x.Type != "image/png" && x.Type != "image/svg+xml") {
+			return refuse(fix, "the figure %q has an image of type %q, %g by %g, with %d bytes", s.ID, x.Type, x.W, x.H, len(x.Data))
 		}
 		if w, ok := m.(Words); ok && !(w.Size > 0) {
 			return refuse(fix, "the figure %q has text of size %g", s.ID, w.Size)

@@ -27,7 +27,7 @@ func thin(line []spot) []spot {
 	for i := range turns {
 		keep[turns[i]] = true
 		if i > 0 {
-			straighten(line, keep, turns[i-1], turns[i])
+			straighten(line, keep, turns[i-1], turns[i], thinError)
 		}
 	}
 	var out []spot
@@ -103,13 +103,14 @@ func turning(line []spot) []int {
 	return out
 }
 
-// straighten marks the points between two others that a straight line would miss.
-func straighten(line []spot, keep []bool, from, to int) {
+// straighten marks the points between two others that a straight line would miss
+// by more than an error.
+func straighten(line []spot, keep []bool, from, to int, most float64) {
 	stack := [][2]int{{from, to}}
 	for len(stack) > 0 {
 		a, b := stack[len(stack)-1][0], stack[len(stack)-1][1]
 		stack = stack[:len(stack)-1]
-		far, at := thinError, -1
+		far, at := most, -1
 		for i := a + 1; i < b; i++ {
 			if d := apart(line[i], line[a], line[b]); d > far {
 				far, at = d, i

@@ -19,6 +19,7 @@ var allowed = map[string][]string{
 	"content/fault":       {},
 	"diagram":             {"diagram", "kinetics/unit"},
 	"diagram/lettering":   {},
+	"diagram/skeleton":    {"diagram/lettering"},
 	"kinetics":            {"kinetics"},
 	"kinetics/unit":       {},
 	"kinetics/rate":       {},

@@ -27,7 +27,7 @@ func peak(name string, v, position float64) diagram.ProfilePoint {
 type scener interface{ Scene() (diagram.Scene, error) }
 
 // figures are the golden cases: invented chemistry, each for one feature.
-var figures = slices.Concat(plainFigures, timeCourses)
+var figures = slices.Concat(plainFigures, timeCourses, formulas)
 
 type golden struct {
 	name   string

@@ -9,6 +9,7 @@ package ink
 
 import (
 	"bytes"
+	"encoding/base64"
 	"encoding/xml"
 	"fmt"
 	"io"
@@ -97,6 +98,9 @@ func (p pen) marks(marks []diagram.Mark) {
 			p.canvas.Circle(tidy(m.X), tidy(m.Y), tidy(m.R), class(m.Role))
 		case diagram.Words:
 			p.words(m)
+		case diagram.Image:
+			fmt.Fprintf(p.canvas.Writer, `<image x="%s" y="%s" width="%s" height="%s" %s role="img" %s href="data:%s;base64,%s" />`+"\n",
+				number(m.X), number(m.Y), number(m.W), number(m.H), class(m.Role), attr("aria-label", m.Alt), escape(m.Type), base64.StdEncoding.EncodeToString(m.Data))
 		case diagram.Group:
 			if m.Role == "" {
 				p.marks(m.Marks)

@@ -67,9 +67,9 @@ func parse(t *testing.T, data []byte) (elements []element, text string) {
 // only, no styles inline, ids that start with the id of the figure, numbers with
 // at most two decimals and no -0.
 func TestSound(t *testing.T) {
-	elementsKnown := map[string]bool{"svg": true, "title": true, "desc": true, "g": true, "line": true, "path": true, "rect": true, "circle": true, "text": true, "tspan": true}
+	elementsKnown := map[string]bool{"svg": true, "title": true, "desc": true, "g": true, "line": true, "path": true, "rect": true, "circle": true, "text": true, "tspan": true, "image": true}
 	attrsKnown := map[string]bool{}
-	for _, a := range strings.Fields("xmlns space role aria-labelledby viewBox width height id class x y x1 y1 x2 y2 rx ry cx cy r d dy font-size text-anchor textLength lengthAdjust") {
+	for _, a := range strings.Fields("xmlns space role aria-labelledby viewBox width height id class x y x1 y1 x2 y2 rx ry cx cy r d dy font-size text-anchor textLength lengthAdjust href aria-label") {
 		attrsKnown[a] = true
 	}
 	numeric := regexp.MustCompile(`-?\d+(\.\d+)?`)
@@ -108,7 +108,7 @@ func TestSound(t *testing.T) {
 							if !strings.HasPrefix(v, ident(s.ID)+"-") {
 								t.Errorf("id %q", v)
 							}
-						case "class", "role", "xmlns", "space", "aria-labelledby", "text-anchor", "lengthAdjust":
+						case "class", "role", "xmlns", "space", "aria-labelledby", "text-anchor", "lengthAdjust", "href", "aria-label":
 						default:
 							for _, n := range numeric.FindAllString(v, -1) {
 								if _, decimals, _ := strings.Cut(n, "."); len(decimals) > 2 {
@@ -161,7 +161,7 @@ func TestIdent(t *testing.T) {
 
 // TestRolesHaveLooks: every class in the golden figures has a rule in both styles.
 func TestRolesHaveLooks(t *testing.T) {
-	plain := map[string]bool{"figure": true, "label": true, "name": true, "path-name": true, "axis-text": true, "group-text": true} // text as all text
+	plain := map[string]bool{"figure": true, "label": true, "name": true, "path-name": true, "axis-text": true, "group-text": true, "measure-text": true} // text as all text
 	for _, f := range figures {
 		s, _ := f.figure.Scene()
 		var b bytes.Buffer

@@ -75,7 +75,22 @@ var rules = []struct{ selector, body string }{
 	{".bar", "fill: $path-1; fill-opacity: 0.28; stroke: $path-1; stroke-width: 1"},
 	{".minus", "fill: $path-2; stroke: $path-2"},
 	{".whisker", "stroke: $ink; stroke-width: 1.25; fill: none"},
+	{".guide, .seam", "stroke: $rule; stroke-width: 0.75; fill: none"},
+	{".seam", "stroke-dasharray: 2 2"},
+	{".measure", "stroke: $soft; stroke-width: 1; fill: none"},
+	{".tip", "fill: $soft; stroke: none"},
 	{"text.group-text", "fill: $ink; font-weight: 400"},
+	{".bond", "stroke: $ink; stroke-width: 1.1; stroke-linecap: round; fill: none"},
+	{".bond.rung", "stroke-linecap: butt"},
+	{".wedge", "fill: $ink; stroke: none"},
+	{"text.atom", "fill: $ink"},
+	{".plate", "fill: #ffffff; stroke: none"},
+	{".image", "image-rendering: auto"},
+	{".node", "fill: none; stroke: $rule; stroke-width: 1"},
+	{".node.noted", "stroke: $ink; stroke-width: 2"},
+	{".flow", "fill: $ink; stroke: none"},
+	{".reaction", "fill: none; stroke: $ink; stroke-width: 1.25"},
+	{".reaction.idle", "stroke: $soft; stroke-width: 1; stroke-dasharray: 4 3"},
 }
 
 // Style returns the CSS for pages that hold inline figures. Its colours are CSS
