@@ -9,9 +9,16 @@ import "math"
 //
 // What the conservation laws fix is taken from them. Where they leave a choice,
 // as between the two parts of a molecule that falls apart, it is the fewest
-// molecules that the species can be made from, step by step.
+// molecules that the species can be made from, step by step. Steps that cannot
+// all balance (R <=> A beside R <=> B and 2 A <=> B) tell nothing.
 func (m *Mechanism) BasisUnits(basis int, outside []bool) []float64 {
-	fixed := m.unitsByLaws(basis, outside)
+	fixed, _ := m.unitsByLaws(basis, outside)
+	if _, balance := m.unitsByLaws(basis, make([]bool, len(outside))); !balance {
+		for i := range fixed {
+			fixed[i] = math.NaN()
+		}
+		return fixed
+	}
 	made := m.unitsByMaking(basis, outside)
 	for i := range fixed {
 		if math.IsNaN(fixed[i]) {
@@ -29,8 +36,9 @@ func (m *Mechanism) BasisUnits(basis int, outside []bool) []float64 {
 
 // unitsByLaws looks for conserved weights of 1 for the basis and 0 for what is
 // outside, and returns those that are the same in all of them; NaN for the
-// others. Entries are small whole numbers, so elimination with pivoting is safe.
-func (m *Mechanism) unitsByLaws(basis int, outside []bool) []float64 {
+// others. It is not ok if there are no such weights. Entries are small whole
+// numbers, so elimination with pivoting is safe.
+func (m *Mechanism) unitsByLaws(basis int, outside []bool) (units []float64, ok bool) {
 	n := len(m.Species)
 	var rows [][]float64
 	for _, st := range m.Steps {
@@ -86,7 +94,7 @@ func (m *Mechanism) unitsByLaws(basis int, outside []bool) []float64 {
 	}
 	for _, row := range rows[rank:] {
 		if math.Abs(row[n]) > zero {
-			return out // no such weights: what is outside turns into the basis
+			return out, false // no such weights: what is outside turns into the basis
 		}
 	}
 	for _, row := range rows[:rank] {
@@ -104,7 +112,7 @@ func (m *Mechanism) unitsByLaws(basis int, outside []bool) []float64 {
 			out[only] = row[n]
 		}
 	}
-	return out
+	return out, true
 }
 
 // unitsByMaking follows the steps from what is charged and counts the fewest

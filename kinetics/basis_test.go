@@ -31,6 +31,8 @@ func TestBasisUnits(t *testing.T) {
 		{"with a leaving group", []string{"R + X -> A + L"}, "R", []string{"X"}, "A", 1},
 		{"made of the other reagent alone", []string{"R + X -> A", "2 X -> W"}, "R", []string{"X"}, "W", nan},
 		{"out of reach", []string{"R -> A", "Y -> B"}, "R", nil, "B", nan},
+		{"steps that cannot all balance", []string{"R <=> A", "R <=> B", "2 A <=> B"}, "R", nil, "A", nan},
+		{"steps that make it of nothing", []string{"R <=> A", "2 C <=> 2 C + R"}, "R", []string{"C"}, "A", nan},
 		{"an isomer charged beside the basis", []string{"E <=> Z", "E -> P"}, "E", []string{"Z"}, "P", 1},
 	} {
 		m := &kinetics.Mechanism{}

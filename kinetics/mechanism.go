@@ -58,6 +58,7 @@ type Common struct {
 // without loss.
 type Mechanism struct {
 	ID, Title, Method string
+	Energies          string  // unit symbol that its author gives energies in, for printing alone; "": kcal/mol
 	Temperature       float64 // K, at which constant energies hold
 	Viscosity         float64 // Pa s, of the solvent; 0 reads as 0.001
 	Species           []Species

@@ -312,7 +312,7 @@ func TestAuditFindsWhatPublishWould(t *testing.T) {
 		{"a file in the place of results", map[string]string{"apart.md": "# Apart\n\n[r](first/results.csv)\n", "first/results.csv": "x\n"}, `"first/results.csv", which is a file of note first.md`},
 		{"a template that asks for too much", map[string]string{"saddlebook.toml": "title = \"T\"\n[theme]\nreplace = { \"claims.html.tmpl\" = \"c.tmpl\" }\n", "c.tmpl": `{{define "title"}}{{end}}{{define "main"}}{{.Nothing}}{{end}}`}, "the theme cannot be used"},
 		{"a second note block", map[string]string{"apart.md": "# Apart\n\n```toml note\nstatus = \"draft\"\n```\n\n```toml note\nstatus = \"in use\"\n```\n"}, "a note has one note block, and the first stands in line 3"},
-		{"a temperature twice", map[string]string{"first.md": strings.Replace(lab["first.md"], "[species]", "at = [\"25 °C\", \"298.15 K\"]\n[species]", 1)}, "is computed twice"},
+		{"a temperature twice", map[string]string{"first.md": strings.Replace(lab["first.md"], "[species]", "at = [\"25 °C\", \"298.15 K\"]\n[species]", 1)}, "is the same temperature as"},
 	} {
 		t.Run(tt.name, func(t *testing.T) {
 			dir := t.TempDir()

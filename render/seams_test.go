@@ -32,7 +32,9 @@ var seams = []struct {
 	{"What decides", "kinetics/control", []string{"Analyse", "Steady", "Problem", "Result", "State", "Order", "Cycle", "Level", "Pair", "PointError"}},
 	{"Block kinds and results", "render/kind", []string{"Kind", "Register", "Ref", "Inputs", "Draws", "Draw", "Gift", "Key", "Number", "Result", "Sampler", "Finding", "Standing"}},
 	{"Scenes", "diagram", []string{"Scene", "Role", "Mark", "Line", "Curve", "Box", "Dot", "Words", "Group", "Profile", "ProfilePath", "ProfilePoint", "Bars", "BarGroup", "Bar",
-		"SignedBars", "SignedGroup", "SignedBar", "TimeCourse", "TimeLine", "TimePoint", "TimeNode", "TimeMark"}},
+		"SignedBars", "SignedGroup", "SignedBar", "TimeCourse", "TimeLine", "TimePoint", "TimeNode", "TimeMark",
+		"ProfileBarrier", "ProfileSpan", "Picture", "Image", "ContourMap", "MapLevel", "MapPoint", "MapRegion", "OverTemperature", "TempLine", "TempPoint", "TempMark", "TempCross",
+		"StraightPlot", "StraightPoint", "StraightBand", "Network", "NetworkNode", "NetworkStep", "NetworkTerm"}},
 	{"Page parts", "render/paper", []string{"Block", "Sheet", "New", "Value", "Table", "Column", "Cell", "Figure", "ClaimRow", "Data"}},
 }
 

@@ -86,7 +86,7 @@ func TestDimerHalfOrder(t *testing.T) {
 		f := math.Exp(-kcal / (rate.R * T))
 		up := math.Sqrt(1 + 8*K*f*c.total)
 		near(t, "factor of the dimer", r.States[3].Factor, (1+root)/(1+up), 1e-11)
-		if r.Cycle != nil || r.NoCycle != "the catalyst meets itself in join: the full steady state only" {
+		if r.Cycle != nil || r.NoCycle != "two catalyst molecules meet in join" {
 			t.Errorf("a cycle of a dimer, or %q", r.NoCycle)
 		}
 		if c.dimer == -12 && (r.Resting != 3 || r.RestingShare < 0.99) {
@@ -156,7 +156,7 @@ func TestPair(t *testing.T) {
 	near(t, "ratio factor of TSb", b.RatioFactor, 1/f, 1e-11)
 	near(t, "ratio factor of in", in.RatioFactor, 1, 1e-11)
 	near(t, "sum of X", a.X+b.X+in.X, 1, 1e-9)
-	if r.Cycle != nil || r.NoCycle != "the cycle is branched: the full steady state only" {
+	if r.Cycle != nil || r.NoCycle != "the cycle is branched" {
 		t.Errorf("%+v %q", r.Cycle, r.NoCycle)
 	}
 }
@@ -193,7 +193,7 @@ func TestActivationEnergy(t *testing.T) {
 		held.Steps[i].Energy = thermo.Constant(m.Steps[i].Energy.At(298.15))
 	}
 	r = analyse(t, &held, 298.15, p)
-	if !math.IsNaN(r.ActivationEnergy) || r.NoActivationEnergy != "constant over temperature, and deciding: TS1, TS2; give H and S, or an Ea" {
+	if !math.IsNaN(r.ActivationEnergy) || r.NoActivationEnergy != "the barrier of TS2 is held constant over temperature; give H and S, or an Ea" {
 		t.Errorf("Ea %g, %q", r.ActivationEnergy, r.NoActivationEnergy)
 	}
 }
@@ -211,9 +211,9 @@ func TestRefusals(t *testing.T) {
 		says         string
 	}{
 		{"no total", steps, map[string]float64{"S": 1, "P": 0, "W": 0, "dead": 0}, nil, control.ErrNotStated,
-			"cat cannot form from what is stated; state the concentration, or the total where it is a catalyst; 0 mol/L if there is none"},
+			"cat cannot form from what is stated; state the concentration, or the total where it is a catalyst; 0 M if there is none"},
 		{"product not held", steps, map[string]float64{"S": 1, "W": 0, "dead": 0}, map[string]float64{"cat": 1}, control.ErrNotStated,
-			"P is to be formed, so it cannot be at its own steady state; state its concentration, 0 mol/L for an initial rate"},
+			"P is to be formed, so it cannot be at its own steady state; state its concentration, 0 M for an initial rate"},
 		{"reagent not held", steps, map[string]float64{"P": 0.1, "W": 0.1, "dead": 0}, map[string]float64{"cat": 1}, control.ErrNotStated,
 			"P comes to a standstill: nothing replaces, or nothing takes away, S; state the concentration of S"},
 		{"by-product not held", steps, map[string]float64{"S": 1, "P": 0.1, "dead": 0}, map[string]float64{"cat": 1}, control.ErrNotStated,
@@ -226,6 +226,12 @@ func TestRefusals(t *testing.T) {
 			"-1 mol/L of S makes no sense; state 0 or more"},
 		{"twice", steps, map[string]float64{"S": 1, "P": 0, "W": 0, "dead": 0, "cat": 1}, map[string]float64{"cat": 1}, control.ErrNotStated,
 			"cat has a concentration that is held and a total; state one of the two"},
+		{"total that is not kept", steps, map[string]float64{"S": 1, "P": 0, "W": 0, "dead": 0, "int": 1e-3}, map[string]float64{"cat": 1}, control.ErrNotStated,
+			"the total of cat is not kept: it exchanges with int, which is held; leave out the concentration of int, which then is at steady state"},
+		{"total that drains away", kill, map[string]float64{"S": 1, "P": 0, "W": 0, "dead": 0}, map[string]float64{"cat": 1}, control.ErrNotStated,
+			"the total of cat is not kept: it exchanges with dead, which is held; leave out the concentration of dead, which then is at steady state"},
+		{"no catalyst at all", steps, map[string]float64{"S": 1, "P": 0, "W": 0, "dead": 0}, map[string]float64{"cat": 0}, control.ErrNotStated,
+			"the total of cat is 0, and turnover is counted by it; state a total above 0"},
 	} {
 		t.Run(c.name, func(t *testing.T) {
 			m := mechanism(t, T, species, c.steps)

@@ -4,7 +4,6 @@ import (
 	"context"
 	"fmt"
 	"math"
-	"strings"
 
 	"saddlebook/kinetics"
 	"saddlebook/kinetics/rate"
@@ -27,6 +26,11 @@ type Result struct {
 
 	Resting      int     // the free species that holds most of the total of the catalyst, or else of the first total; -1: there is no total
 	RestingShare float64 // of that total, counted as the total is
+	// Counted is the species whose total that is, and Shares how that total is
+	// spread over all species; NaN for one that it does not count. −1 and nil
+	// without such a total.
+	Counted int
+	Shares  []float64
 
 	Turnover float64 // 1/s: Rate over the total of the catalyst; NaN without one
 	Cycle    *Cycle  // nil: NoCycle says why, or no catalyst is named
@@ -37,7 +41,9 @@ type Result struct {
 type State struct {
 	Name string
 	Step bool
-	X    float64 // degree of rate control, ∂ ln r/∂(−G/RT)
+	// X is the degree of rate control, ∂ ln r/∂(−G/RT) with all other states where
+	// they stand; of a step this is ∂ ln r/∂ ln k of both directions, at fixed K.
+	X float64
 	// Factor is the rate with this state 1 kcal/mol higher over the rate as it
 	// is; NaN: WhyNot says why there is none.
 	Factor      float64
@@ -69,7 +75,7 @@ func Analyse(ctx context.Context, m *kinetics.Mechanism, T float64, p Problem) (
 	if err != nil {
 		return nil, err
 	}
-	out := &Result{T: T, Rate: t.rate(p.RateOf), Ratio: math.NaN(), Turnover: math.NaN(), ActivationEnergy: math.NaN(), Resting: -1, RestingShare: math.NaN()}
+	out := &Result{T: T, Rate: t.rate(p.RateOf), Ratio: math.NaN(), Turnover: math.NaN(), ActivationEnergy: math.NaN(), Resting: -1, RestingShare: math.NaN(), Counted: -1}
 	out.composition(t)
 	of, ok := t.answers(p.RateOf)
 	if !ok {
@@ -87,6 +93,9 @@ func Analyse(ctx context.Context, m *kinetics.Mechanism, T float64, p Problem) (
 		out.Ratio = top.rate / bottom.rate
 	}
 	for i, name := range m.States() {
+		if p.Brief {
+			break
+		}
 		st := State{Name: name, Step: i >= len(m.Species), RatioX: math.NaN(), RatioFactor: math.NaN()}
 		forward, back, err := byEnergy(m, n, i)
 		if err != nil {
@@ -140,6 +149,9 @@ func steadyState(ctx context.Context, n *kinetics.Network, p *Problem) (*steady,
 	if err != nil {
 		return nil, err
 	}
+	if err := s.totalsKept(p); err != nil {
+		return nil, err
+	}
 	for _, sum := range [][]kinetics.Term{p.RateOf, p.Pair[0], p.Pair[1]} {
 		if len(sum) > 0 {
 			if err := s.possible(p, sum); err != nil {
@@ -173,9 +185,7 @@ func noRate(n *kinetics.Network, sum []kinetics.Term) error {
 
 // factors solves the point again with one state 1 kcal/mol higher.
 func (st *State) factors(ctx context.Context, m *kinetics.Mechanism, i int, t *steady, p *Problem, base *Result) error {
-	d := make([]float64, len(m.Species)+len(m.Steps))
-	d[i] = Kcal
-	n, err := m.Shifted(d).At(t.n.T)
+	n, err := m.Moved(t.n, i, Kcal).At(t.n.T)
 	if err != nil {
 		return err
 	}
@@ -199,28 +209,45 @@ func (st *State) factors(ctx context.Context, m *kinetics.Mechanism, i int, t *s
 // matters is from where on the rate counts as answering to a rate constant.
 const matters = 1e-6
 
+// decides is from which degree of rate control on a step is named as deciding.
+const decides = 0.01
+
 // activation is R T² d ln r/dT, or why there is none: an energy that is held
 // constant has no enthalpy to give.
 func activation(m *kinetics.Mechanism, n *kinetics.Network, of *answer) (Ea float64, whyNot string) {
-	var held []string
+	// Steps that are held: those that decide, and those in equilibrium of which K does.
+	var deciding, balanced []string
 	for k := range n.Reactions {
-		if math.Abs(of.forward[k]) < matters && math.Abs(of.back[k]) < matters {
+		size := math.Max(math.Abs(of.forward[k]), math.Abs(of.back[k]))
+		if size < matters {
 			continue
 		}
 		step := n.Reactions[k].Step
 		// At the temperature at which a constant holds, nothing is held: look beside it.
-		if m.HeldStep(step, 1.01*n.T) != "" || m.HeldStep(step, 0.99*n.T) != "" {
-			held = append(held, n.Reactions[k].Name)
+		if m.HeldStep(step, 1.01*n.T) == "" && m.HeldStep(step, 0.99*n.T) == "" {
+			continue
+		}
+		if math.Abs(of.forward[k]+of.back[k]) >= decides {
+			deciding = append(deciding, n.Reactions[k].Label)
+		} else {
+			balanced = append(balanced, n.Reactions[k].Label)
 		}
 	}
-	if len(held) > 0 {
-		return math.NaN(), "constant over temperature, and deciding: " + strings.Join(held, ", ") + "; give H and S, or an Ea"
+	if len(deciding) > 0 {
+		return math.NaN(), held("the barrier", deciding) + "; give H and S, or an Ea"
+	}
+	if len(balanced) > 0 {
+		return math.NaN(), held("the ΔG", balanced) + "; give H and S"
 	}
 	forward, back, err := byTemperature(m, n)
 	if err != nil {
 		return math.NaN(), "the energies do not go together at other temperatures: " + err.Error()
 	}
 	return rate.R * n.T * n.T * of.along(forward, back), ""
+}
+
+func held(what string, steps []string) string {
+	return what + " of " + words(steps) + " is held constant over temperature"
 }
 
 // rest finds the resting state, and returns the law of the catalyst: how many
@@ -239,7 +266,14 @@ func (r *Result) rest(t *steady, p *Problem) []float64 {
 	if w == nil {
 		return nil
 	}
+	r.Counted, r.Shares = of, make([]float64, len(t.place))
+	for s := range r.Shares {
+		r.Shares[s] = math.NaN()
+	}
 	for i, s := range t.free {
+		if w[i] > 0 {
+			r.Shares[s] = w[i] * math.Exp(t.x[i]) / t.total[of]
+		}
 		if share := w[i] * math.Exp(t.x[i]) / t.total[of]; !(share <= r.RestingShare) && w[i] > 0 {
 			r.Resting, r.RestingShare = s, share
 		}

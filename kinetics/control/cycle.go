@@ -72,7 +72,7 @@ func (e edge) sign() float64 {
 // species; the text says why there is no cycle to unroll.
 func (t *steady) cycle(p *Problem, w []float64) (*Cycle, string, error) {
 	if w == nil {
-		return nil, "no law counts the catalyst alone: the full steady state only", nil
+		return nil, "no law counts the catalyst alone", nil
 	}
 	var edges []edge
 	for k, st := range t.steps {
@@ -83,7 +83,7 @@ func (t *steady) cycle(p *Problem, w []float64) (*Cycle, string, error) {
 				case w[q.at] == 0:
 					continue
 				case w[q.at] != 1 || q.n != 1 || side == 0 && e.from >= 0 || side == 1 && e.to >= 0:
-					return nil, fmt.Sprintf("the catalyst meets itself in %s: the full steady state only", st.r.Name), nil
+					return nil, t.several(&st, w), nil
 				case side == 0:
 					e.from = q.at
 				default:
@@ -101,11 +101,31 @@ func (t *steady) cycle(p *Problem, w []float64) (*Cycle, string, error) {
 	}
 	turn, err := t.turnOf(p, ring)
 	if err != nil || turn == nil {
-		return nil, fmt.Sprintf("a turn of the cycle makes no %s: the full steady state only", sumText(t.n, p.RateOf)), err
+		return nil, fmt.Sprintf("a turn of the cycle makes no %s", sumText(t.n, p.RateOf)), err
 	}
 	c := t.unroll(p, turn, edges, w)
 	c.Turns = turn[0].sign() * t.flux(turn[0].k, t.xi) / t.total[p.Catalyst]
 	return c, "", nil
+}
+
+// several says how a step takes part that has more than one of the catalyst on
+// a side, or a state that holds several of it.
+func (t *steady) several(st *step, w []float64) string {
+	for _, places := range [2][]place{st.from, st.to} {
+		met := 0
+		for _, q := range places {
+			if w[q.at] > 0 {
+				met += q.n
+			}
+		}
+		switch {
+		case met == 2:
+			return "two catalyst molecules meet in " + st.r.Label
+		case met > 2:
+			return "several catalyst molecules meet in " + st.r.Label
+		}
+	}
+	return "a state that holds several catalyst molecules reacts in " + st.r.Label
 }
 
 func sumText(n *kinetics.Network, sum []kinetics.Term) string {
@@ -116,7 +136,7 @@ func sumText(n *kinetics.Network, sum []kinetics.Term) string {
 	return names(n, of)
 }
 
-const branched = "the cycle is branched: the full steady state only"
+const branched = "the cycle is branched"
 
 // single returns the edges of the one cycle, found by taking dead ends away.
 func single(edges []edge) (ring []edge, why string) {
@@ -154,7 +174,7 @@ func single(edges []edge) (ring []edge, why string) {
 	}
 	// Every state has two edges: one ring, unless there are several.
 	if ring = walk(left); len(ring) < len(left) {
-		return nil, "there is more than one cycle: the full steady state only"
+		return nil, "there is more than one cycle"
 	}
 	return ring, ""
 }

@@ -34,8 +34,9 @@
 //
 // Degrees. X = ∂ ln r/∂(−G/RT) at fixed concentrations, totals and other
 // energies, by differentiating the equations above (one adjoint solution); how
-// rate constants answer to an energy is asked of Mechanism.Shifted, so that any
-// rate law of a step will do. Factors for a shift of 1 kcal/mol are the quotient
+// rate constants answer to an energy is asked of Mechanism.Moved, so that any
+// rate law of a step will do: a stated rate constant counts as a transition state
+// that stays where it is when a species is moved. Factors for a shift of 1 kcal/mol are the quotient
 // of two full solutions and no extrapolation. Over transition states X sums to 1
 // where the rate is of first order in all rate constants together.
 //

@@ -158,14 +158,10 @@ func difference(a, b float64) float64 {
 // shift is by how much energies are moved to find how rate constants answer, in RT.
 const shift = 0.01
 
-// byEnergy differentiates ln k by −G/RT of a state.
+// byEnergy differentiates ln k by −G/RT of a state, all others where they stand.
 func byEnergy(m *kinetics.Mechanism, here *kinetics.Network, state int) (forward, back []float64, err error) {
-	d := make([]float64, len(m.Species)+len(m.Steps))
 	RT := rate.R * here.T
-	forward, back, err = slopes(here, shift*RT, func(by float64) (*kinetics.Network, error) {
-		d[state] = by
-		return m.Shifted(d).At(here.T)
-	})
+	forward, back, err = slopes(here, shift*RT, func(by float64) (*kinetics.Network, error) { return m.Moved(here, state, by).At(here.T) })
 	for k := range forward {
 		forward[k] *= -RT
 		back[k] *= -RT

@@ -4,6 +4,7 @@ import (
 	"errors"
 	"fmt"
 	"math"
+	"slices"
 	"strings"
 
 	"saddlebook/kinetics"
@@ -26,6 +27,8 @@ type Problem struct {
 
 	Catalyst int   // species that turnover is counted by; -1: none
 	Turnover []int // steps of one turn, in order, by number; nil: found from the network
+
+	Brief bool // leave out how every state decides, which takes a solution each: no States in the Result
 }
 
 // Errors that a PointError matches.
@@ -62,6 +65,9 @@ func (p *Problem) check(n *kinetics.Network) error {
 	if len(p.RateOf) == 0 {
 		return &PointError{Of: ErrNoRate, Step: -1, Msg: "no product is named whose rate is meant", Fix: "name one"}
 	}
+	if c := p.Catalyst; c >= 0 && p.total(c) == 0 {
+		return &PointError{Of: ErrNotStated, Species: []int{c}, Step: -1, Msg: fmt.Sprintf("the total of %s is 0, and turnover is counted by it", n.Names[c]), Fix: "state a total above 0"}
+	}
 	for s := range species {
 		h, t := p.Held[s], p.total(s)
 		for _, c := range []float64{h, t} {
@@ -73,16 +79,23 @@ func (p *Problem) check(n *kinetics.Network) error {
 			return &PointError{Of: ErrNotStated, Species: []int{s}, Step: -1, Msg: fmt.Sprintf("%s has a concentration that is held and a total", n.Names[s]), Fix: "state one of the two"}
 		}
 	}
+	var lacking []int
 	for _, side := range [][]kinetics.Term{p.RateOf, p.Pair[0], p.Pair[1]} {
 		for _, t := range side {
-			if math.IsNaN(p.Held[t.Species]) {
-				name := n.Names[t.Species]
-				return &PointError{Of: ErrNotStated, Species: []int{t.Species}, Step: -1,
-					Msg: fmt.Sprintf("%s is to be formed, so it cannot be at its own steady state", name), Fix: "state its concentration, 0 mol/L for an initial rate"}
+			if math.IsNaN(p.Held[t.Species]) && !slices.Contains(lacking, t.Species) {
+				lacking = append(lacking, t.Species)
 			}
 		}
 	}
-	return nil
+	switch len(lacking) {
+	case 0:
+		return nil
+	case 1:
+		return &PointError{Of: ErrNotStated, Species: lacking, Step: -1,
+			Msg: fmt.Sprintf("%s is to be formed, so it cannot be at its own steady state", names(n, lacking)), Fix: "state its concentration, 0 M for an initial rate"}
+	}
+	return &PointError{Of: ErrNotStated, Species: lacking, Step: -1,
+		Msg: fmt.Sprintf("%s are to be formed, so they cannot be at their own steady state", names(n, lacking)), Fix: "state their concentrations, 0 M for an initial rate"}
 }
 
 func (p *Problem) total(s int) float64 {
@@ -98,8 +111,13 @@ func names(n *kinetics.Network, species []int) string {
 	for _, s := range species {
 		out = append(out, n.Names[s])
 	}
-	if len(out) < 2 {
-		return strings.Join(out, "")
+	return words(out)
+}
+
+// words joins names for a sentence.
+func words(list []string) string {
+	if len(list) < 2 {
+		return strings.Join(list, "")
 	}
-	return strings.Join(out[:len(out)-1], ", ") + " and " + out[len(out)-1]
+	return strings.Join(list[:len(list)-1], ", ") + " and " + list[len(list)-1]
 }

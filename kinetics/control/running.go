@@ -56,7 +56,7 @@ func newSystem(n *kinetics.Network, p *Problem) (*system, error) {
 		}
 		return nil, &PointError{Of: ErrNotStated, Species: lacking, Step: -1,
 			Msg: fmt.Sprintf("%s cannot form from what is stated", names(n, lacking)),
-			Fix: fmt.Sprintf("state the %s, or the total where it is a catalyst; 0 mol/L if there is none", what)}
+			Fix: fmt.Sprintf("state the %s, or the total where it is a catalyst; 0 M if there is none", what)}
 	}
 	for i := range s.place {
 		s.place[i] = -1
@@ -226,6 +226,70 @@ func (s *system) possible(p *Problem, sum []kinetics.Term) error {
 		}
 	}
 	return nil
+}
+
+// totalsKept refuses a total that no conservation law of the free species
+// holds: some state that it counts is held, and exchanges with the rest.
+func (s *system) totalsKept(p *Problem) error {
+	for i, of := range s.free {
+		if !(p.total(of) > 0) || s.conserved(i, nil) {
+			continue
+		}
+		var held []int
+		for h := range p.Held {
+			if !math.IsNaN(p.Held[h]) && h != of && s.conserved(i, []int{h}) {
+				held = append(held, h)
+			}
+		}
+		into, fix := "species that are held", "let every state of it be at its steady state"
+		if len(held) > 0 {
+			into = names(s.n, held)
+			fix = fmt.Sprintf("leave out the concentration of %s, which then is at steady state", into)
+			into += ", which is held"
+			if len(held) > 1 {
+				fix = fmt.Sprintf("leave out the concentrations of %s, which then are at steady state", names(s.n, held))
+				into = names(s.n, held) + ", which are held"
+			}
+		}
+		return &PointError{Of: ErrNotStated, Species: append([]int{of}, held...), Step: -1,
+			Msg: fmt.Sprintf("the total of %s is not kept: it exchanges with %s", s.n.Names[of], into), Fix: fix}
+	}
+	return nil
+}
+
+// conserved tells whether some law counts the free species i and, with the same
+// sign, every one of more, which are taken as free besides.
+func (s *system) conserved(i int, more []int) bool {
+	rows := make([][]float64, len(s.steps))
+	for k, st := range s.steps {
+		for j := range s.free {
+			rows[k] = append(rows[k], s.net[j][k])
+		}
+		for _, h := range more {
+			n := 0
+			for _, t := range st.r.From {
+				if t.Species == h {
+					n -= t.N
+				}
+			}
+			for _, t := range st.r.To {
+				if t.Species == h {
+					n += t.N
+				}
+			}
+			rows[k] = append(rows[k], float64(n))
+		}
+	}
+	for _, w := range nullspace(rows, identity(len(s.free)+len(more))) {
+		counts := math.Abs(w[i]) > small
+		for j := range more {
+			counts = counts && w[i]*w[len(s.free)+j] > small
+		}
+		if counts {
+			return true
+		}
+	}
+	return false
 }
 
 // species returns the free species of a step.

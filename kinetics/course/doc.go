@@ -55,7 +55,12 @@
 // The heat released is that of what the steps have made, from enthalpies, not
 // from rates times time. The heat left is a linear programme over extents, the
 // most that the listed steps can give, wherever equilibrium lies; doses that are
-// to come do not count in it.
+// to come do not count in it (Heat.Dosed tells them apart).
+//
+// A peak of a product is where its slope turns from above zero to below, or the
+// start or end of a part. The highest heat rate is one over the middles and ends
+// of the steps of the computation; what comes within a millionth of the programme
+// after a part of the run begins does not count.
 //
 // # Accuracy
 //

@@ -37,6 +37,20 @@ type Heat struct {
 	// Rise is the adiabatic rise of that, K; NaN without PerKelvin. What is
 	// endothermic throughout has none.
 	Rise float64
+	// Way is how often each step turns on the way to Whole, mol/L, below zero
+	// backwards. Where several ways release as much, it is one of them.
+	Way []float64
+	// Dosed is by how much less, J/L, the steps can release from what is there at
+	// the start: what the doses bring.
+	Dosed float64
+	// Run is what was released by the end of the run, J/L, and RunRise the
+	// adiabatic rise of that, K, NaN without PerKelvin.
+	Run, RunRise float64
+	// Peak is the highest rate of release, W/L, and PeakAt when, s. NaN without
+	// Course.Pace, or where nothing is released at any time. What comes within a
+	// millionth of the programme after its start, or after anything begins, ends
+	// or jumps, does not count.
+	Peak, PeakAt float64
 	// Warmings are the heat left, J/L, where each of Course.Warmings starts.
 	Warmings []float64
 }
@@ -78,7 +92,8 @@ func (c *Course) Heat(d HeatData) (*Heat, error) {
 			return nil, fmt.Errorf("%w: enthalpy %d is %g J/mol; give a finite number", ErrHeat, i+1, x)
 		}
 	}
-	h := &Heat{Whole: math.NaN(), Rise: math.NaN()}
+	nan := math.NaN()
+	h := &Heat{Whole: nan, Rise: nan, Dosed: nan, Run: nan, RunRise: nan, Peak: nan, PeakAt: nan}
 	nets := stepNets(net)
 	for i := range net.Reactions {
 		r := &net.Reactions[i]
@@ -119,7 +134,7 @@ func (c *Course) Heat(d HeatData) (*Heat, error) {
 		return q / d.PerKelvin
 	}
 	left := func(c []float64) float64 {
-		q, ok := best.most(c)
+		q, _, ok := best.most(c)
 		if !ok && err == nil {
 			err = fmt.Errorf("%w: the steps as written release heat without end, making more of everything they need; check that their reactions balance", ErrHeat)
 		}
@@ -141,6 +156,17 @@ func (c *Course) Heat(d HeatData) (*Heat, error) {
 	}
 	h.Whole = left(c.whole)
 	h.Rise = rise(h.Whole)
+	if _, extents, ok := best.most(c.whole); ok {
+		h.Way = best.steps(extents, len(net.Reactions))
+	}
+	h.Dosed = math.Max(0, h.Whole-left(c.start))
+	h.Run = h.Report[len(h.Report)-1].Released
+	h.RunRise = rise(h.Run)
+	for _, p := range c.Pace {
+		if q := -dot(scale, p.Making); q > 0 && !(q <= h.Peak) {
+			h.Peak, h.PeakAt = q, p.T
+		}
+	}
 	if err != nil {
 		return nil, err
 	}

@@ -146,7 +146,7 @@ func TestMostHeatAgainstCorners(t *testing.T) {
 			enthalpy[i] = dot(nets[i], h)
 		}
 		best := newRelease(net, nets, enthalpy)
-		got, ok := best.most(c)
+		got, _, ok := best.most(c)
 		if !ok {
 			t.Fatalf("trial %d: without bound", trial)
 		}

@@ -200,6 +200,7 @@ func (w *walk) pass(d dense, a, b float64) {
 			w.c.Trace = append(w.c.Trace, at(t))
 		}
 	}
+	w.climb(d, a, b)
 	if len(w.p.pairs) > 0 {
 		w.search(d, a, b)
 	}
@@ -216,6 +217,14 @@ func (w *walk) arrive(t float64) {
 // finish closes the course at t.
 func (w *walk) finish(t float64) {
 	w.c.End = t
+	for _, h := range w.high {
+		if w.p.run.Peaks {
+			w.c.Peaks = append(w.c.Peaks, h.best)
+			if h.point != nil && h.best.T < t {
+				w.c.Trace = append(w.c.Trace, *h.point)
+			}
+		}
+	}
 	w.c.Report = append(w.c.Report, w.point(t, w.y, w.slope))
 	for i := range w.watch {
 		h, q := &w.watch[i], &w.c.Pairs[i]

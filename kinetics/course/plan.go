@@ -22,6 +22,7 @@ type Plan struct {
 	steps int               // reactions
 	legs  []leg
 	whole []float64 // charge and all doses, by species
+	start []float64 // charge and what is dosed at once at the start
 	end   float64   // s, of the programme
 
 	n     int   // species
@@ -41,7 +42,8 @@ type Plan struct {
 	places      [][]int // by product: into members
 	closed      []bool  // by pair: the ratio at equilibrium does not depend on the charge
 	unreachable []string
-	oneWay      bool // some step has no return
+	drains      []Drain // by pair
+	oneWay      bool    // some step has no return
 	laws        []conserved
 	notFirst    string // why the network is not first order throughout; "" if it is
 }
@@ -98,9 +100,12 @@ func Prepare(m *kinetics.Mechanism, r Run) (*Plan, error) {
 		}
 	}
 	p.width = p.n + len(p.sinks)
-	p.whole = slices.Clone(r.Charge)
+	p.whole, p.start = slices.Clone(r.Charge), slices.Clone(r.Charge)
 	for _, d := range r.Doses {
 		p.whole[d.Species] += d.Amount
+		if d.From == 0 && d.Lasts == 0 {
+			p.start[d.Species] += d.Amount
+		}
 	}
 	p.fix(net)
 	p.products(net)
@@ -138,6 +143,7 @@ func (p *Plan) products(net *kinetics.Network) {
 		p.places = append(p.places, at)
 	}
 	for _, q := range p.pairs {
+		from := Drain{Step: -1}
 		all := slices.Concat(p.run.Products[q[0]].Members, p.run.Products[q[1]].Members)
 		closed, why := true, ""
 		for _, s := range all {
@@ -145,12 +151,65 @@ func (p *Plan) products(net *kinetics.Network) {
 				closed = false
 			}
 			if why == "" && net.Drained(s) {
-				why = fmt.Sprintf("a step without return drains %s: equilibrium is not reachable", p.names[s])
+				from = drain(net, s)
+				why = from.Words(net.Reactions[from.Step].Name, p.names)
 			}
 		}
 		p.closed = append(p.closed, closed)
-		p.unreachable = append(p.unreachable, why)
+		p.unreachable, p.drains = append(p.unreachable, why), append(p.drains, from)
 	}
+}
+
+// drain finds the step that drains a species, itself or by way of what reversible
+// steps turn it into.
+func drain(net *kinetics.Network, species int) Drain {
+	near := make([]bool, len(net.Names))
+	near[species] = true
+	for more := true; more; {
+		more = false
+		for i := range net.Reactions {
+			r := &net.Reactions[i]
+			both := slices.Concat(r.From, r.To)
+			if !r.Returns || !slices.ContainsFunc(both, func(t kinetics.Term) bool { return near[t.Species] }) {
+				continue
+			}
+			for _, t := range both {
+				more = more || !near[t.Species]
+				near[t.Species] = true
+			}
+		}
+	}
+	found := Drain{Step: -1}
+	for i := range net.Reactions {
+		r := &net.Reactions[i]
+		if r.Returns {
+			continue
+		}
+		for _, t := range r.From {
+			made := 0
+			for _, u := range r.To {
+				if u.Species == t.Species {
+					made += u.N
+				}
+			}
+			switch {
+			case !near[t.Species] || made >= t.N:
+			case t.Species == species:
+				return Drain{i, species, species}
+			case found.Step < 0:
+				found = Drain{i, t.Species, species}
+			}
+		}
+	}
+	return found
+}
+
+// Words says it with the names of steps and species given.
+func (d Drain) Words(step string, species []string) string {
+	if d.Takes == d.From {
+		return fmt.Sprintf("equilibrium is not reachable, as step %s, without return, uses up %s", step, species[d.From])
+	}
+	return fmt.Sprintf("equilibrium is not reachable, as step %s, without return, takes %s away from %s", step, species[d.Takes], species[d.From])
 }
 
 // Simulate computes a run.

@@ -14,31 +14,45 @@ type release struct {
 	n      int
 	change [][]float64 // by direction of a step, by species
 	gain   []float64   // J/mol, by direction
+	step   []int       // by direction
+	sign   []float64   // by direction: −1 backwards
 }
 
 func newRelease(net *kinetics.Network, nets [][]float64, enthalpy []float64) *release {
 	r := &release{n: len(net.Names)}
 	for i := range net.Reactions {
 		r.change, r.gain = append(r.change, nets[i]), append(r.gain, -enthalpy[i])
+		r.step, r.sign = append(r.step, i), append(r.sign, 1)
 		if net.Reactions[i].Returns {
 			back := make([]float64, r.n)
 			for s, v := range nets[i] {
 				back[s] = -v
 			}
 			r.change, r.gain = append(r.change, back), append(r.gain, enthalpy[i])
+			r.step, r.sign = append(r.step, i), append(r.sign, -1)
 		}
 	}
 	return r
 }
 
-// most returns the most heat from c, in J/L; not ok if there is no bound.
+// steps sums the extents of directions by step.
+func (r *release) steps(extents []float64, n int) []float64 {
+	out := make([]float64, n)
+	for j, x := range extents {
+		out[r.step[j]] += r.sign[j] * x
+	}
+	return out
+}
+
+// most returns the most heat from c, in J/L, and the extents by direction that
+// give it, mol/L; not ok if there is no bound.
 //
 // It is the simplex method on a full table: one row by species, its slack what
 // is left of it, from the start at no extent. The lowest-numbered gainful
 // direction enters and, of rows that tie, the lowest-numbered basic variable
 // leaves (Bland's rule), so that no start with many species at zero can cycle.
 // Source: Bland, Math. Oper. Res. 2, 103 (1977), from memory, unverified.
-func (r *release) most(c []float64) (heat float64, ok bool) {
+func (r *release) most(c []float64) (heat float64, extents []float64, ok bool) {
 	m := len(r.change)
 	width := m + r.n
 	size := 0.0
@@ -68,7 +82,13 @@ func (r *release) most(c []float64) (heat float64, ok bool) {
 			}
 		}
 		if in < 0 {
-			return -cost[width], true
+			extents = make([]float64, m)
+			for s, j := range basic {
+				if j < m {
+					extents[j] = rows[s][width]
+				}
+			}
+			return -cost[width], extents, true
 		}
 		out, least := -1, math.Inf(1)
 		for s := range rows {
@@ -81,7 +101,7 @@ func (r *release) most(c []float64) (heat float64, ok bool) {
 			}
 		}
 		if out < 0 {
-			return math.Inf(1), false
+			return math.Inf(1), nil, false
 		}
 		p := rows[out]
 		f := p[in]

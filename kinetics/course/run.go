@@ -17,6 +17,7 @@ type Run struct {
 
 	Report []float64 // s, ascending: where results are wanted; times after the end are left out
 	Trace  int       // how many points for drawing besides; 0: none
+	Peaks  bool      // whether Course.Peaks and Course.Pace are wanted
 
 	RTol float64 // 0: 1e-9
 }

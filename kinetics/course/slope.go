@@ -18,7 +18,23 @@ type dense interface {
 // of degree 4.
 type piece struct {
 	*stiff.Step
-	y []float64
+	five  [5][]float64 // the state at its ends and quarters
+	known bool         // five is of this step
+}
+
+// take passes to a step.
+func (s *piece) take(st *stiff.Step) { s.Step, s.known = st, false }
+
+// At is that of the step, which in its middle and at its end may be known.
+func (s *piece) At(t float64, out []float64) {
+	switch {
+	case s.known && t == s.T1:
+		copy(out, s.five[4])
+	case s.known && t == s.T0+(s.T1-s.T0)/2:
+		copy(out, s.five[2])
+	default:
+		s.Step.At(t, out)
+	}
 }
 
 // Slope differentiates the polynomial through five points of the step.
@@ -26,6 +42,16 @@ func (s *piece) Slope(t float64, out []float64) {
 	h := (s.T1 - s.T0) / 4
 	if !(h > 0) { // an end met as the step began: the slope is what it was
 		return
+	}
+	if !s.known {
+		for j := range s.five {
+			at := s.T0 + h*float64(j)
+			if j == 4 {
+				at = s.T1
+			}
+			s.Step.At(at, s.five[j])
+		}
+		s.known = true
 	}
 	x := (t - s.T0) / h
 	clear(out)
@@ -43,12 +69,7 @@ func (s *piece) Slope(t float64, out []float64) {
 			}
 			weight += term
 		}
-		at := s.T0 + h*float64(j)
-		if j == 4 {
-			at = s.T1
-		}
-		s.At(at, s.y)
-		for i, y := range s.y {
+		for i, y := range s.five[j] {
 			out[i] += weight / h * y
 		}
 	}

@@ -39,6 +39,8 @@ type walk struct {
 	gone    []float64 // taken out at instants, by species
 	sides   []int     // by Until
 	watch   []watch   // by pair
+	high    []summit  // by product
+	climbed *stretch  // in which high was last seen
 
 	report, trace         []float64
 	nextReport, nextTrace int
@@ -49,6 +51,8 @@ type walk struct {
 	ln       []float64
 	exact    int // stretches solved exactly
 	stepped  int // stretches integrated
+	steps    int // of these
+	multi    int // of steps, those of the multistep formulas
 }
 
 func newWalk(ctx context.Context, p *Plan, m *kinetics.Mechanism) *walk {
@@ -64,7 +68,10 @@ func (w *walk) reset() {
 		size *= 2
 	}
 	w.y, w.look, w.slope = make([]float64, size), make([]float64, size), make([]float64, size)
-	w.between, w.piece.y = make([]float64, size), make([]float64, size)
+	w.between, w.piece = make([]float64, size), piece{}
+	for j := range w.piece.five {
+		w.piece.five[j] = make([]float64, size)
+	}
 	w.in, w.gone = slices.Clone(p.run.Charge), make([]float64, p.n)
 	copy(w.y, p.run.Charge)
 	if p.twin {
@@ -73,12 +80,13 @@ func (w *walk) reset() {
 	w.since = 0
 	w.sides = make([]int, len(p.run.Until))
 	w.watch = make([]watch, len(p.pairs))
+	w.high, w.climbed = make([]summit, len(p.run.Products)), nil
 	w.report, w.nextReport, w.nextTrace = p.run.Report, 0, 0
 	w.restAt, w.rest = math.NaN(), nil
-	w.exact, w.stepped = 0, 0
-	w.c = &Course{Ended: -1, Floor: p.atol, net: p.net, whole: p.whole}
+	w.exact, w.stepped, w.steps, w.multi = 0, 0, 0, 0
+	w.c = &Course{Ended: -1, Floor: p.atol, net: p.net, whole: p.whole, start: p.start}
 	for i, q := range p.pairs {
-		w.c.Pairs = append(w.c.Pairs, Pair{A: q[0], B: q[1], Coincide: true, Unreachable: p.unreachable[i],
+		w.c.Pairs = append(w.c.Pairs, Pair{A: q[0], B: q[1], Coincide: true, Unreachable: p.unreachable[i], Drain: p.drains[i],
 			Changeover: math.NaN(), Even: math.NaN(), ChangeoverKelvin: math.NaN(), EvenKelvin: math.NaN()})
 	}
 }
@@ -104,6 +112,7 @@ func (w *walk) stretches() error {
 		}
 	}
 	nets := map[float64]*kinetics.Network{}
+	ramps := map[[2]float64][]reach{} // cycles of temperature come back to the same
 	for i := range p.legs {
 		l := &p.legs[i]
 		parts := []reach{{from: l.start, to: l.finish}}
@@ -117,10 +126,14 @@ func (w *walk) stretches() error {
 				nets[l.start] = net
 			}
 		} else {
-			var err error
-			if parts, err = laws(w.m, p.members, l.start, l.finish, 0); err != nil {
-				return err
+			ends := [2]float64{l.start, l.finish}
+			if ramps[ends] == nil {
+				var err error
+				if ramps[ends], err = laws(w.m, p.members, l.start, l.finish, 0); err != nil {
+					return err
+				}
 			}
+			parts = ramps[ends]
 		}
 		if err := w.countable(net, parts); err != nil {
 			return err
@@ -337,14 +350,16 @@ func (w *walk) cross(s *stretch) (ended int, t float64, err error) {
 		prob.Events = append(prob.Events, stiff.Event{Stop: true, G: func(t float64, y []float64) float64 { return w.until(i, t, y) }})
 	}
 	err = p.once.Run(w.ctx, prob, func(st *stiff.Step) error {
-		w.piece.Step = st
+		w.piece.take(st)
 		w.pass(&w.piece, st.T0, st.T1)
 		if st.T1 >= s.to || len(prob.Events) > 0 {
 			w.piece.Slope(st.T1, w.slope)
 		}
 		return nil
 	})
-	w.c.Lowest = math.Min(w.c.Lowest, p.once.Stats().Lowest)
+	did := p.once.Stats()
+	w.steps, w.multi = w.steps+did.Steps, w.multi+did.Multistep
+	w.c.Lowest = math.Min(w.c.Lowest, did.Lowest)
 	if err != nil {
 		return 0, 0, w.stuck(err)
 	}

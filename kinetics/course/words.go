@@ -3,12 +3,21 @@ package course
 import (
 	"fmt"
 	"math"
+
+	"saddlebook/kinetics/unit"
 )
 
 // words says how the run was computed and what a reader must know.
 func (w *walk) words() {
 	c, p := w.c, w.p
-	integrated := fmt.Sprintf("integrated with error control (Rosenbrock method of order 5, relative tolerance %.0e)", p.rtol)
+	steps := "Rosenbrock method of order 5"
+	switch {
+	case w.multi > 0 && w.multi == w.steps:
+		steps = "numerical differentiation formulas of orders 1 to 5"
+	case w.multi > 0:
+		steps = "numerical differentiation formulas of orders 1 to 5, with a Rosenbrock method of order 5"
+	}
+	integrated := fmt.Sprintf("integrated with error control (%s, relative tolerance %s)", steps, unit.Digits(p.rtol, 1))
 	const exactly = "exact (exponential of the rate matrix), as every step is of first order"
 	switch {
 	case w.stepped == 0:

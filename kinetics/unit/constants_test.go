@@ -83,6 +83,9 @@ func TestConversions(t *testing.T) {
 		{"J/g/K", "J/kg/K", SpecificHeat, 1000, "by definition"},
 		{"u", "g/mol", MolarMass, 1.00000000105, "CODATA 2022: molar mass constant, relative standard uncertainty 3.1e-10"},
 		{"kg Å2", "kg m2", Inertia, 1e-20, "by definition"},
+		{"kcal/L", "J/L", Heat, 4184, "by definition"},
+		{"kJ/L/h", "W/L", HeatRate, 1.0 / 3.6, "by definition"},
+		{"kW/m3", "W/L", HeatRate, 1, "by definition"},
 	} {
 		t.Run(tt.from+" to "+tt.to, func(t *testing.T) {
 			a, err := Lookup(tt.from, tt.want)

@@ -24,6 +24,8 @@ var (
 	SpecificHeat  = Dim{Energy: 1, Mass: -1, Temperature: -1}
 	MolarMass     = Dim{Mass: 1, Amount: -1}
 	Inertia       = Dim{Mass: 1, Length: 2}
+	Heat          = Dim{Energy: 1, Volume: -1}           // per volume of a mixture
+	HeatRate      = Dim{Energy: 1, Volume: -1, Time: -1} // likewise
 )
 
 // RateConstant is the kind of a rate constant of the given order: 1/s for 1,
@@ -66,6 +68,8 @@ var kinds = []kind{
 	{SpecificHeat, "a heat capacity per mass", "1.7 J/g/K", []string{"J/g/K", "kJ/kg/K", "J/kg/K", "cal/g/K"}},
 	{MolarMass, "a molar mass", "28.01 g/mol", []string{"g/mol", "u", "kg/mol"}},
 	{Inertia, "a moment of inertia", "1e-44 kg m2", []string{"kg m2"}},
+	{Heat, "a heat per volume", "34 kJ/L", []string{"kJ/L", "J/L", "kcal/L", "J/mL"}},
+	{HeatRate, "a heat per volume and time", "12 W/L", []string{"W/L", "mW/mL", "kW/m3", "kJ/L/h"}},
 	{RateConstant(0), "a rate constant of order 0", "2e-5 M s-1", []string{"M s-1", "mM s-1", "M min-1", "M h-1", "mol L-1 s-1"}},
 	{RateConstant(1), "a rate constant of order 1", "3.5e-4 s-1", []string{"s-1", "min-1", "h-1", "ms-1", "d-1"}},
 	{RateConstant(2), "a rate constant of order 2", "0.12 M-1 s-1", []string{"M-1 s-1", "L mol-1 s-1", "M-1 min-1", "M-1 h-1", "mM-1 s-1"}},

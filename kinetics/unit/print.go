@@ -19,7 +19,7 @@ const (
 	FormSpan                 // a time in the unit that suits it, whatever unit is given; see Span
 	FormTime                 // a time in the given unit, 3 digits
 	FormPosition             // 2 decimals
-	FormMolar                // a concentration, 3 digits
+	FormMolar                // a concentration, 3 digits; in M, below 0.01 M, in the unit that suits it
 	FormFactor               // 2 digits
 	FormConstant             // an equilibrium constant, 2 digits
 	FormWhole                // no decimals
@@ -44,6 +44,8 @@ func Print(base float64, u Unit, f Form) string {
 		return Ratio(base)
 	case FormSpan:
 		return Span(base)
+	case FormMolar:
+		u = prefixed(base, u)
 	}
 	s := PrintBare(base, u, f)
 	if u.Symbol == "" || s == none {
@@ -51,6 +53,26 @@ func Print(base float64, u Unit, f Form) string {
 	}
 	return s + space + strings.ReplaceAll(Superscript(u.Symbol), " ", space)
 }
+
+// prefixed is M with the prefix that suits a concentration: 1.00 mM, 6.30 µM.
+// Any other unit, and what is below 1 pM, stays as it is.
+func prefixed(base float64, u Unit) Unit {
+	if u.Symbol != molars[0].Symbol || base == 0 {
+		return u
+	}
+	for i, p := range molars {
+		least := 0.9995 // rounds to 1.00
+		if i == 0 {
+			least = 0.009995
+		}
+		if math.Abs(p.Of(base)) >= least {
+			return p
+		}
+	}
+	return u
+}
+
+var molars = []Unit{Must("M"), Must("mM"), Must("µM"), Must("nM"), Must("pM")}
 
 // PrintBare is Print without the unit, for columns that name it in their head.
 // A span is in u there.
@@ -130,8 +152,8 @@ func digits(x float64, n, low, high int) string {
 	return signed(x < 0, strconv.FormatFloat(y, 'f', max(0, n-1-p), 64))
 }
 
-// Percent prints a fraction to 0.1 %: "72.1 %". What would round to 0.0 keeps
-// its size ("3.1 × 10⁻⁵ %"), what would round to 100.0 without reaching it is
+// Percent prints a fraction to 0.1 %: "72.1 %". What would round to 0.0 has one
+// digit ("0.04 %", "0.002 %"), below 0.001 % a power of ten ("3.1 × 10⁻⁵ %"); what would round to 100.0 without reaching it is
 // ">99.9 %", and exactly 0 and 1 are "0 %" and "100 %".
 func Percent(fraction float64) string {
 	p := 100 * math.Abs(fraction)
@@ -145,8 +167,10 @@ func Percent(fraction float64) string {
 		return none
 	case p == 0:
 		s = "0"
-	case p < 0.05:
+	case p < 0.00095:
 		s = sign + digits(p, 2, 0, 0)
+	case p < 0.05:
+		s = sign + digits(p, 1, -3, 0)
 	case p >= 99.95 && math.Abs(fraction) < 1:
 		s = ">" + sign + "99.9"
 		if fraction < 0 {

@@ -49,7 +49,14 @@ func TestPrint(t *testing.T) {
 		{0.4449, "", None, FormPosition, "0.44"},
 		{nan, "", None, FormPosition, "none"},
 		{0.2, "M", Concentration, FormMolar, "0.200 M"},
-		{3.14159e-7, "M", Concentration, FormMolar, "3.14 × 10⁻⁷ M"},
+		{0.01, "M", Concentration, FormMolar, "0.0100 M"},
+		{0.001, "M", Concentration, FormMolar, "1.00 mM"},
+		{6.3e-6, "M", Concentration, FormMolar, "6.30 µM"},
+		{9.999e-4, "M", Concentration, FormMolar, "1.00 mM"},
+		{-3.14159e-7, "M", Concentration, FormMolar, "-314 nM"},
+		{4.2e-22, "M", Concentration, FormMolar, "4.20 × 10⁻²² M"},
+		{0, "M", Concentration, FormMolar, "0 M"},
+		{2e-7, "mM", Concentration, FormMolar, "2.00 × 10⁻⁷ mM"},
 		{87.4, "%", None, FormWhole, "87 %"},
 		{-0.4, "%", None, FormWhole, "0 %"},
 		{-78, "°C", Temperature, FormKelvin, "-78 °C"},
@@ -133,7 +140,8 @@ func TestPercent(t *testing.T) {
 		want     string
 	}{
 		{0, "0 %"}, {1, "100 %"}, {-1, "-100 %"}, {0.5, "50.0 %"}, {0.7209, "72.1 %"},
-		{0.0005, "0.1 %"}, {math.Nextafter(0.0005, 0), "5.0 × 10⁻² %"}, {3.1e-7, "3.1 × 10⁻⁵ %"}, {-3.1e-7, "-3.1 × 10⁻⁵ %"},
+		{0.0005, "0.1 %"}, {math.Nextafter(0.0005, 0), "0.05 %"}, {4.1e-4, "0.04 %"}, {-1.4e-4, "-0.01 %"}, {9.4e-5, "0.009 %"}, {1.04e-5, "0.001 %"},
+		{9.51e-6, "0.001 %"}, {9.49e-6, "9.5 × 10⁻⁴ %"}, {3.1e-7, "3.1 × 10⁻⁵ %"}, {-3.1e-7, "-3.1 × 10⁻⁵ %"},
 		{0.9994, "99.9 %"}, {0.9995, ">99.9 %"}, {math.Nextafter(1, 0), ">99.9 %"}, {-0.9996, "<-99.9 %"},
 		{math.Nextafter(1, 2), "100.0 %"}, {1.05, "105.0 %"}, {math.NaN(), "none"}, {5e-324, "4.9 × 10⁻³²² %"},
 	} {

@@ -306,7 +306,7 @@ func (d Dim) times(o Dim, n int8) Dim {
 // negative powers, everything else with strokes.
 func product(factors []factor, d Dim) string {
 	positive := slices.ContainsFunc(factors, func(f factor) bool { return f.exp > 0 })
-	powers := !positive || d.Time < 0
+	powers := !positive || d.Time < 0 && d != HeatRate
 	var above, below []string
 	for _, f := range factors {
 		name, exp := parts[f.part].symbol, f.exp

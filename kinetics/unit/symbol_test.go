@@ -144,6 +144,9 @@ func TestKnown(t *testing.T) {
 		if p.dim == (Dim{Energy: 1}) {
 			u, err = Lookup(p.symbol + "/mol")
 		}
+		if p.dim == (Dim{Energy: 1, Time: -1}) {
+			u, err = Lookup(p.symbol + "/L")
+		}
 		if err != nil || u.Scale != p.num/p.den {
 			t.Errorf("%q: %v, %v", p.symbol, u, err)
 		}

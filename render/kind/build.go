@@ -70,7 +70,8 @@ func (s *mechanismSource) build(in Inputs) (*kinetics.Mechanism, fault.Problems)
 		b.fault([]string{"frequency-scale"}, fmt.Sprintf("a factor of %g on frequencies makes no sense", *f), "give a number above 0, such as 0.97")
 	}
 	b.readEnergies(species, steps)
-	m := &kinetics.Mechanism{ID: s.ID, Title: s.Title, Method: s.Method, Temperature: b.home}
+	m := &kinetics.Mechanism{ID: s.ID, Title: s.Title, Method: s.Method, Energies: s.Energies, Temperature: b.home}
+	b.problems = append(b.problems, s.plainNumbers()...)
 	if v := s.Viscosity; v != nil {
 		if m.Viscosity = v.SI; !(m.Viscosity > 0) {
 			b.fault([]string{"viscosity"}, fmt.Sprintf("viscosity %s makes no sense", v), "give one above 0, such as \"0.6 mPa s\"")
@@ -293,11 +294,14 @@ func (b *builder) standard(own string) rate.Standard {
 }
 
 func (b *builder) species(s speciesSource) kinetics.Species {
-	if s.Forms < 0 {
-		b.fault([]string{"species", s.Name, "forms"}, fmt.Sprintf("%d forms make no sense", s.Forms), "give 1 or more")
+	forms := 1
+	if s.Forms != nil {
+		if forms = *s.Forms; forms < 1 {
+			b.fault([]string{"species", s.Name, "forms"}, fmt.Sprintf("%d forms make no sense", forms), "give 1 or more")
+		}
 	}
 	g := b.energies[s.Name]
-	sp := kinetics.Species{Name: s.Name, Label: s.Label, Source: s.Source, Energy: g.energy, Unknown: g.unknown, Forms: s.Forms, Standard: b.standard(s.Standard), SD: g.sd, SDEntropy: g.sdEntropy}
+	sp := kinetics.Species{Name: s.Name, Label: s.Label, Source: s.Source, Energy: g.energy, Unknown: g.unknown, Forms: forms, Standard: b.standard(s.Standard), SD: g.sd, SDEntropy: g.sdEntropy}
 	if sp.SD == nil && sp.SDEntropy == nil && !sp.Unknown && b.src.Error != nil && b.src.Error.Species != nil {
 		sp.SD = deviation(b.src.Error.Species.SI)
 	}

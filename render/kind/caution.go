@@ -3,7 +3,6 @@ package kind
 import (
 	"fmt"
 
-	"saddlebook/kinetics/unit"
 	"saddlebook/render/paper"
 )
 
@@ -16,11 +15,15 @@ const caution = "Not a safety assessment. Listed steps only: no decomposition, g
 func cautionConditions(sheet *paper.Sheet) { sheet.Caution(caution) }
 
 // cautionWarming says how much has not reacted when warming starts. unreacted
-// is the share as it is printed.
-func cautionWarming(sheet *paper.Sheet, after float64, basis, unreacted string) {
+// is the share as it is printed, heat what the pot can still give, "" if that is
+// not known or nothing.
+func cautionWarming(sheet *paper.Sheet, after float64, basis, unreacted, heat string) {
 	when := "When warming starts, at once,"
 	if after > 0 {
-		when = fmt.Sprintf("When warming starts, after %s,", unit.Span(after))
+		when = fmt.Sprintf("When warming starts, after %s,", timeWords(after))
 	}
-	sheet.Caution(fmt.Sprintf("%s %s of the %s charged is unreacted.", when, unreacted, basis))
+	if heat != "" {
+		heat = fmt.Sprintf(", and the listed steps can still set free %s", heat)
+	}
+	sheet.Caution(fmt.Sprintf("%s %s of the %s charged is unreacted%s.", when, unreacted, basis, heat))
 }

@@ -55,6 +55,10 @@ func concentrationsWith(m *kinetics.Mechanism, charge []schema.NamedAmount, basi
 	for _, a := range charge {
 		path := []string{"charge", a.Name}
 		i := m.Index(a.Name)
+		if bad := tooMuch(path, a.Quantity, base); bad != nil {
+			ps = append(ps, bad)
+			continue
+		}
 		switch {
 		case i < 0:
 			ps = append(ps, unknownSpecies(m, a.Name, path))
@@ -71,6 +75,23 @@ func concentrationsWith(m *kinetics.Mechanism, charge []schema.NamedAmount, basi
 		}
 	}
 	return c, base, ps
+}
+
+// densest is more than anything holds, mol/L: water has 55, diamond 290 (density
+// over molar mass).
+const densest = 1000
+
+// tooMuch refuses an amount that nothing can be charged in; base is what equiv
+// and mol% refer to, mol/L.
+func tooMuch(path []string, q unit.Quantity, base float64) *fault.Problem {
+	c := q.SI
+	if q.Unit.Dim == unit.Equivalent {
+		c *= base
+	}
+	if !(c > densest) {
+		return nil
+	}
+	return problem(path, fmt.Sprintf("%q is more than any mixture holds", q), "check its unit and its power of ten")
 }
 
 func unknownSpecies(m *kinetics.Mechanism, name string, path []string) *fault.Problem {

@@ -20,7 +20,7 @@ func init() {
 		Name:    "control",
 		Doc:     "What decides the rate at one composition: the degree of rate control of every state, reaction orders, activation energy, resting state, and for a catalyst its turnover and energetic span.",
 		Method:  "Steady states by Newton's method on net rates, from state reduction or an integration at rest; degrees of rate control and orders by implicit differentiation, factors by a second solution; the energetic span of a cycle beside its exact turnover.",
-		Version: 1,
+		Version: 2,
 		Fields: []schema.Field{
 			{Key: "id", Doc: "the name by which readings and claims call this block", Type: schema.Text, Name: true, Required: true, Example: "decides"},
 			usesMechanism,
@@ -32,7 +32,7 @@ func init() {
 			{Key: "temperature", Doc: "the temperatures, with at", Type: schema.Amounts, Dims: []unit.Dim{unit.Temperature}, Default: "the mechanism's own temperature", Example: "60 °C"},
 			{Key: "run", Doc: "a run to take the composition and the temperature of, in place of at", Type: schema.Text, Wants: "run", Example: "cold"},
 			{Key: "time", Doc: "when in the run: a time at which it reports, or end", Type: schema.Text, Default: "end", Example: "2 h"},
-			{Key: "steady", Doc: "the species of the run that count as being at their steady state; all others are held as they stand", Type: schema.Words, Default: "the catalyst", Wants: "species", Example: `["int", "rest"]`},
+			{Key: "steady", Doc: "the species of the run that count as being at their steady state; all others are held as they stand", Type: schema.Words, Default: "with a catalyst, every state that shares its conserved total", Wants: "species", Example: `["int", "rest"]`},
 			{Key: "catalyst", Doc: "the species that turnover is counted by; its amount is a total over all its states", Type: schema.Text, Wants: "species", Example: "cat"},
 			{Key: "totals", Doc: "other species whose amount is a total over all their states, such as a ligand", Type: schema.Words, Wants: "species", Example: `["L"]`},
 			{Key: "turnover", Doc: "the steps of one turn, in order", Type: schema.Words, Default: "found from the steps", Wants: "step", Example: `["TS1", "TS2"]`},
@@ -58,8 +58,9 @@ func init() {
 			{"ratio-factor/STATE@T", "the ratio with this state 1 kcal/mol higher, over the ratio as it is"},
 			{"order/SPECIES@T", "reaction order in what is held, or in a total"},
 			{"activation-energy@T", "apparent activation energy of Arrhenius, −R d ln r/d(1/T)"},
-			{"resting-state@T", "the species that holds most of the total"},
-			{"resting-share@T", "its share of the total"},
+			{"resting-state@T", "the species that holds most of the total of the catalyst, or else of the first total"},
+			{"resting-share@T", "its share of the total; in draws of the errors that of the same species, where another may hold more"},
+			{"share/SPECIES@T", "share of that total in this species"},
 			{"amount/SPECIES@T", "concentration, at the steady state where it is not held"},
 			{"turnover@T", "product formed per catalyst and time, at the concentrations stated"},
 			{"turns@T", "turns of the cycle per catalyst and time, exact"},
@@ -94,8 +95,12 @@ func init() {
 }
 
 // controlDraws is how often the errors are drawn: each draw solves one steady
-// state for every state of the mechanism.
+// state for every state of the mechanism, unless it is large.
 const controlDraws = 512
+
+// large tells that draws of the errors leave out how every state decides: each
+// state takes a solution, and one solution the square of their number.
+func large(states, temperatures int) bool { return states*states*states*temperatures > 80_000 }
 
 type controlSource struct {
 	ID          string               `key:"id"`
@@ -123,7 +128,7 @@ func (s *controlSource) refs() []Ref {
 }
 
 func (s *controlSource) check() fault.Problems {
-	var ps fault.Problems
+	ps := distinct("temperature", s.Temperature)
 	add := func(key, msg, fix string) { ps = append(ps, problem([]string{key}, msg, fix)) }
 	switch {
 	case s.Run == "" && len(s.At) == 0:
@@ -250,7 +255,11 @@ func (s *controlSource) problem(m *kinetics.Mechanism, where *whereabouts) (cont
 	}
 	total := map[int]bool{p.Catalyst: p.Catalyst >= 0}
 	for i, name := range s.Totals {
-		total[index("totals", i, name)] = true
+		k := index("totals", i, name)
+		if k >= 0 && total[k] {
+			ps = append(ps, problem([]string{"totals", fmt.Sprint(i + 1)}, fmt.Sprintf("the amount of %q is a total already", name), "leave it out here"))
+		}
+		total[k] = true
 	}
 	p.Held, p.Total = make([]float64, len(species)), make([]float64, len(species))
 	for i := range species {
@@ -276,6 +285,15 @@ func (s *controlSource) problem(m *kinetics.Mechanism, where *whereabouts) (cont
 	steady := map[int]bool{p.Catalyst: p.Catalyst >= 0}
 	for i, name := range s.Steady {
 		steady[index("steady", i, name)] = true
+	}
+	if p.Catalyst >= 0 && len(s.Steady) == 0 && len(ps) == 0 {
+		states, bad := statesOfCatalyst(m, &p)
+		if bad != nil {
+			return p, append(ps, bad)
+		}
+		for _, i := range states {
+			steady[i] = true
+		}
 	}
 	if len(where.c) != len(species) || where.names != nil && !slices.Equal(where.names, species) {
 		return p, append(ps, problem([]string{"run"}, fmt.Sprintf("the species of run %q are not those of mechanism %q", s.Run, m.ID), "name a run of this mechanism"))
@@ -319,10 +337,16 @@ func (s *controlSource) decide(ctx context.Context, m *kinetics.Mechanism, where
 	for _, st := range m.Steps {
 		v.Steps = append(v.Steps, st.Name)
 		v.StepLabels = append(v.StepLabels, or(st.Label, st.Name))
+		if st.Law != nil || st.Above {
+			v.Rates = append(v.Rates, or(st.Label, st.Name))
+		}
 	}
+	v.Energies = m.Energies
 	v.Catalyst = p.Catalyst
 	v.RateOf = besideText(p.RateOf, v.Labels)
+	v.Pair = [2]string{besideText(p.Pair[0], v.Labels), besideText(p.Pair[1], v.Labels)}
 	temperatures := atOr(s.Temperature, m)
+	p.Brief = nominal != nil && large(len(m.States()), len(temperatures))
 	if where != nil {
 		temperatures = []unit.Quantity{{SI: where.kelvin, Unit: celsius}}
 	}
@@ -335,7 +359,7 @@ func (s *controlSource) decide(ctx context.Context, m *kinetics.Mechanism, where
 				return v, asProblems(err, "")
 			}
 			if p.Total, err = control.Totals(n, p.Held, where.c, p.Catalyst); err != nil {
-				return v, s.faults(m, err)
+				return v, s.faults(m, &p, err)
 			}
 		}
 		for i := range p.Held {
@@ -350,8 +374,11 @@ func (s *controlSource) decide(ctx context.Context, m *kinetics.Mechanism, where
 			at = nominal.At[len(v.At)]
 			at.Why = pe.Msg
 		case err != nil:
-			return v, s.faults(m, err)
+			return v, s.faults(m, &p, err)
 		default:
+			if nominal != nil {
+				r.Resting = nominal.At[len(v.At)].Resting
+			}
 			at.keep(r, v.Labels)
 		}
 		v.At = append(v.At, at)
@@ -360,7 +387,7 @@ func (s *controlSource) decide(ctx context.Context, m *kinetics.Mechanism, where
 }
 
 // faults puts an error of the core at the key that mends it.
-func (s *controlSource) faults(m *kinetics.Mechanism, err error) error {
+func (s *controlSource) faults(m *kinetics.Mechanism, p *control.Problem, err error) error {
 	var pe *control.PointError
 	if !errors.As(err, &pe) {
 		return asProblems(err, "")
@@ -378,5 +405,9 @@ func (s *controlSource) faults(m *kinetics.Mechanism, err error) error {
 	case errors.Is(err, control.ErrNoRate):
 		path = []string{"rate-of"}
 	}
-	return fault.Problems{problem(path, pe.Msg, pe.Fix)}
+	fix := pe.Fix
+	if s.Run != "" && errors.Is(err, control.ErrNotStated) && s.Catalyst != "" {
+		fix += ": list them in steady, " + steadyExample(m, p)
+	}
+	return fault.Problems{problem(path, pe.Msg, fix)}
 }

@@ -10,7 +10,6 @@ import (
 var (
 	perHour      = unit.Must("h-1")
 	molarPerHour = unit.Must("M h-1")
-	kcalPerMol   = unit.Must("kcal/mol")
 )
 
 // pairText is how keys name the pair.
@@ -37,6 +36,7 @@ func (s *controlSource) results(v controlValue) []Result {
 
 // resultsAt adds the same keys whatever the numbers are.
 func (s *controlSource) resultsAt(v controlValue, q controlPoint, put func(quantity, item string, n func() Number, u unit.Unit, f unit.Form)) {
+	energy, _ := energyUnits(v.Energies)
 	number := func(x orNone, why string) func() Number { return func() Number { return numberOr(x, why) } }
 	put("rate", "", number(q.Rate, "none"), molarPerHour, unit.FormRate)
 	states := append(append([]string{}, v.Names...), v.Steps...)
@@ -61,14 +61,19 @@ func (s *controlSource) resultsAt(v controlValue, q controlPoint, put func(quant
 	for _, i := range v.Stated {
 		put("order", v.Names[i], func() Number { return numberOr(q.Orders[i], "not told at 0 M") }, plain, unit.FormPosition)
 	}
-	put("activation-energy", "", number(q.Ea, q.NoEa), kcalPerMol, unit.FormEnergy)
+	put("activation-energy", "", number(q.Ea, q.NoEa), energy, unit.FormEnergy)
 	put("resting-state", "", func() Number {
 		if q.Resting < 0 {
 			return nothing("no total is stated")
 		}
-		return Number{Kind: Words, Text: v.Names[q.Resting]}
+		return Number{Kind: Words, Text: v.Labels[q.Resting]}
 	}, plain, unit.FormPlain)
-	put("resting-share", "", number(q.Share, "no total is stated"), percent, unit.FormPercent)
+	put("resting-share", "", number(q.share(q.Resting), "no total is stated"), percent, unit.FormPercent)
+	for i, name := range v.Names {
+		if !q.share(i).none() {
+			put("share", name, number(q.share(i), "none"), percent, unit.FormPercent)
+		}
+	}
 	for i, name := range v.Names {
 		put("amount", name, func() Number { return numberOr(q.C[i], "none") }, molar, unit.FormMolar)
 	}
@@ -78,8 +83,13 @@ func (s *controlSource) resultsAt(v controlValue, q controlPoint, put func(quant
 	put("turnover", "", number(q.Turns, "the catalyst has no total"), perHour, unit.FormRate)
 	c, why := q.Cycle, or(q.NoCycle, "no cycle")
 	if c == nil {
-		put("turns", "", number(none(), why), perHour, unit.FormRate)
-		put("span", "", number(none(), why), kcalPerMol, unit.FormEnergy)
+		for _, quantity := range []string{"turns", "span-turns"} {
+			put(quantity, "", number(none(), why), perHour, unit.FormRate)
+		}
+		for _, quantity := range []string{"span", "turn-energy"} {
+			put(quantity, "", number(none(), why), energy, unit.FormEnergy)
+		}
+		put("span-pair", "", number(none(), why), plain, unit.FormPlain)
 		return
 	}
 	span := "none"
@@ -87,15 +97,16 @@ func (s *controlSource) resultsAt(v controlValue, q controlPoint, put func(quant
 		span = "runs backwards"
 	}
 	put("turns", "", number(c.Turns, "none"), perHour, unit.FormRate)
-	put("span", "", number(c.Span, span), kcalPerMol, unit.FormEnergy)
-	put("turn-energy", "", number(c.Turn, "a step of the turn has no return at these concentrations"), kcalPerMol, unit.FormEnergy)
+	put("span", "", number(c.Span, span), energy, unit.FormEnergy)
+	put("turn-energy", "", number(c.Turn, "a step of the turn has no return at these concentrations"), energy, unit.FormEnergy)
 	put("span-turns", "", number(c.BySpan, span), perHour, unit.FormRate)
 	put("span-pair", "", func() Number {
 		if len(c.Pairs) == 0 {
 			return nothing(span)
 		}
 		top := c.Pairs[0]
-		return Number{Kind: Words, Text: fmt.Sprintf("%s over %s", states[c.Levels[top.TS].State], states[c.Levels[top.I].State])}
+		labels := v.labels()
+		return Number{Kind: Words, Text: fmt.Sprintf("%s over %s", labels[c.Levels[top.TS].State], labels[c.Levels[top.I].State])}
 	}, plain, unit.FormPlain)
 	for _, l := range c.Levels {
 		put("turnover-control", states[l.State], number(l.Control, span), plain, unit.FormPosition)
@@ -115,14 +126,15 @@ func (v *controlValue) composition(q controlPoint) string {
 	return "At " + unit.Print(q.T.SI, q.T.Unit, unit.FormPlain) + " with " + v.stated(q)
 }
 
-// stated words what is stated at a point.
+// stated words what is stated at a point: "0.500 M substrate and 5.00 mM
+// catalyst in all".
 func (v *controlValue) stated(q controlPoint) string {
 	var held []string
 	for _, i := range v.Stated {
 		if i >= len(q.Stated) || q.Stated[i].none() {
 			continue
 		}
-		text := v.Labels[i] + " " + molarWords(float64(q.Stated[i]))
+		text := molarWords(float64(q.Stated[i])) + " " + v.Labels[i]
 		if q.Total[i] {
 			text += " in all"
 		}
@@ -131,15 +143,11 @@ func (v *controlValue) stated(q controlPoint) string {
 	return listWords(held)
 }
 
-// molarWords prints a concentration in the unit that suits it.
+// molarWords prints a stated concentration as a bench has it: below 0.1 M in mM.
 func molarWords(c float64) string {
 	u := molar
-	switch {
-	case c == 0 || c >= 0.1:
-	case c >= 1e-4:
+	if c > 0 && c < 0.1 && c >= 1e-4 {
 		u = unit.Must("mM")
-	case c >= 1e-7:
-		u = unit.Must("µM")
 	}
 	return unit.Print(c, u, unit.FormMolar)
 }

@@ -44,7 +44,7 @@ turnover = ["TS1", "TS2", "TS3"]`), nil)
 		near(t, key, value(t, s, key), want, 1e-9)
 	}
 	for key, want := range map[string]string{"c/resting-state": "c2", "c/span-pair": "TS3 over c2",
-		"c/activation-energy": "constant over temperature, and deciding: TS1, TS2, TS3; give H and S, or an Ea"} {
+		"c/activation-energy": "the barrier of TS3 is held constant over temperature; give H and S, or an Ea"} {
 		if got := result(t, s, key).Value.Text; got != want {
 			t.Errorf("%s: %q, want %q", key, got, want)
 		}
@@ -53,7 +53,7 @@ turnover = ["TS1", "TS2", "TS3"]`), nil)
 		t.Errorf("the turnover reads %q", got)
 	}
 	for _, key := range []string{"c/turnover", "c/turns", "c/span-turns", "c/rate"} {
-		if a := strings.Join(result(t, s, key).Assumes, "; "); !strings.Contains(a, "At 25\u00a0°C with S 1.00\u00a0M, P 1.00\u00a0M and c1 1.00\u00a0M in all") {
+		if a := strings.Join(result(t, s, key).Assumes, "; "); !strings.Contains(a, "At 25\u00a0°C with 1.00\u00a0M S, 1.00\u00a0M P and 1.00\u00a0M c1 in all") {
 			t.Errorf("%s does not name its concentrations: %q", key, a)
 		}
 	}
@@ -122,6 +122,9 @@ func TestControlOfARun(t *testing.T) {
 	near(t, "total", total, 0.01, 1e-8)
 	near(t, "rate at the steady state", value(t, s, "c/rate"), want, 1e-3)
 	near(t, "order in the catalyst", value(t, s, "c/order/c1"), 1, 1e-9)
+	// Its states are found from its total.
+	found := good(t, turnoverCycle+run+controlBlock("rate-of = \"P\"\nrun = \"batch\"\ntime = \"1 h\"\ncatalyst = \"c1\""), nil)
+	near(t, "rate with the states found", value(t, found, "c/rate"), value(t, s, "c/rate"), 1e-14)
 	near(t, "the catalyst rests in c2", value(t, s, "c/resting-share"), value(t, s, "batch/amount/c2@1 h")/0.01, 1e-3)
 }
 
@@ -163,7 +166,12 @@ func TestControlRefusals(t *testing.T) {
 		{"after the run", "rate-of = \"P\"\nrun = \"batch\"\ntime = \"50 h\"", "time: the run is over after"},
 		{"no run", "rate-of = \"P\"\nrun = \"m\"", `run: "m" keeps no composition; name a block of kind run`},
 		{"temperature of a run", "rate-of = \"P\"\nrun = \"batch\"\ntemperature = \"25 °C\"", "temperature: the run has a temperature of its own"},
-		{"states not steady", "rate-of = \"P\"\nrun = \"batch\"\ncatalyst = \"c1\"", "run: c1 has no total: it turns into species that are held; let every state of the catalyst be at its steady state"},
+		{"states not steady", "rate-of = \"P\"\nrun = \"batch\"\ncatalyst = \"c1\"\nsteady = [\"c2\"]", `steady: c1 has no total: it turns into species that are held; let every state of the catalyst be at its steady state: list them in steady, such as steady = ["c2", "c3"]`},
+		{"states not told", "rate-of = \"S\"\nrun = \"batch\"\ncatalyst = \"P\"", `catalyst: no conserved total counts P and leaves out what is formed, so its states are not known; name its states, such as steady = ["int", "rest"]`},
+		{"no product held", "rate-of = \"P\"\nratio = \"P:S\"\nat = { c1 = \"1 M\" }\ncatalyst = \"c1\"", "at: P and S are to be formed, so they cannot be at their own steady state; state their concentrations, 0 M for an initial rate"},
+		{"a state held beside the total", "rate-of = \"P\"\nat = { S = \"1 M\", P = 0, c1 = \"1 M\", c2 = \"1 mM\" }\ncatalyst = \"c1\"", "at: the total of c1 is not kept: it exchanges with c2, which is held; leave out the concentration of c2"},
+		{"no catalyst at all", "rate-of = \"P\"\nat = { S = \"1 M\", P = 0, c1 = 0 }\ncatalyst = \"c1\"", "at: the total of c1 is 0, and turnover is counted by it; state a total above 0"},
+		{"a total twice", "rate-of = \"P\"" + at + "\ncatalyst = \"c1\"\ntotals = [\"c1\"]", `totals.1: the amount of "c1" is a total already; leave it out here`},
 	} {
 		t.Run(tt.name, func(t *testing.T) {
 			_, faults := evaluate(t, turnoverCycle+run+controlBlock(tt.lines), nil)
@@ -173,5 +181,42 @@ func TestControlRefusals(t *testing.T) {
 				t.Errorf("got %q, want %q in it", b.String(), tt.want)
 			}
 		})
+	}
+}
+
+// The share is that of the state named, in draws where another holds more too:
+// c2 and c3 of the cycle share the catalyst about evenly within the errors.
+func TestRestingShareIsOfOneState(t *testing.T) {
+	s := good(t, strings.Replace(turnoverCycle, "c3 = { G = -3 }", "c3 = { G = \"-4.9 ± 1\" }", 1)+controlBlock("rate-of = \"P\"\nat = { S = \"1 M\", P = \"1 M\", c1 = \"1 M\" }\ncatalyst = \"c1\""), nil)
+	r := result(t, s, "c/resting-share")
+	RT := gasConstant * 298.15 / (1000 * calorie)
+	share := func(c3 float64) float64 { return 1 / (1 + math.Exp(-(5+c3)/RT)) } // of c2, c1 being scarce
+	near(t, "share", r.Value.Value, share(-4.9), 1e-3)
+	const z = 1.6448536269514722 // 95 % point of the normal distribution, Abramowitz and Stegun 26.2
+	near(t, "low", *r.Low, share(-4.9-z), 0.03)
+	near(t, "high", *r.High, share(-4.9+z), 0.03)
+	near(t, "share of c3", value(t, s, "c/share/c3"), 1-share(-4.9), 1e-2)
+}
+
+// Two catalyst molecules that meet: no span, and the results say so.
+func TestControlWithoutASpan(t *testing.T) {
+	note := strings.Replace(strings.Replace(turnoverCycle, "c3 = {", "dim = { G = -9 }\nc3 = {", 1), "[step]", "[step]\njoin = { reaction = \"2 c1 <=> dim\", G = 9 }", 1)
+	s := good(t, note+controlBlock("rate-of = \"P\"\nat = { S = \"1 M\", P = \"1 M\", c1 = \"1 M\" }\ncatalyst = \"c1\""), nil)
+	for _, key := range []string{"turns", "span", "span-turns", "span-pair", "turn-energy"} {
+		if v := result(t, s, "c/"+key).Value; v.Kind != kind.Nothing || v.Text != "two catalyst molecules meet in join" {
+			t.Errorf("%s: %+v", key, v)
+		}
+	}
+	near(t, "all of the catalyst", value(t, s, "c/share/c1")+value(t, s, "c/share/c2")+value(t, s, "c/share/c3")+value(t, s, "c/share/dim"), 1, 1e-12)
+}
+
+// Energies are printed in the unit that the mechanism gives them in.
+func TestControlFollowsTheUnitOfTheMechanism(t *testing.T) {
+	s := good(t, strings.Replace(turnoverCycle, "[species]", "energies = \"kJ/mol\"\n[species]", 1)+controlBlock("rate-of = \"P\"\nat = { S = \"1 M\", P = \"1 M\", c1 = \"1 M\" }\ncatalyst = \"c1\"")+
+		"\n```toml profile\nid = \"p\"\nmechanism = \"m\"\npath = [{ through = [\"c1 + S\", \"TS1\", \"c2\"] }]\n```\n", nil)
+	for key, want := range map[string]string{"c/span": "20.0\u00a0kJ/mol", "c/turn-energy": "−10.0\u00a0kJ/mol", "p/level/TS1": "12.0\u00a0kJ/mol"} {
+		if got, _ := result(t, s, key).Print(""); got != want {
+			t.Errorf("%s reads %q, want %q", key, got, want)
+		}
 	}
 }

@@ -15,8 +15,11 @@ type controlValue struct {
 	Names, Labels     []string // species
 	Steps, StepLabels []string
 	RateOf            string // the sum, in labels
-	Stated            []int  // species with a stated concentration or total
-	Catalyst          int    // species; -1: none
+	Pair              [2]string
+	Energies          string   // unit that the mechanism gives energies in
+	Rates             []string // labels of the steps with a stated rate or barrier
+	Stated            []int    // species with a stated concentration or total
+	Catalyst          int      // species; -1: none
 	At                []controlPoint
 }
 
@@ -36,8 +39,9 @@ type controlPoint struct {
 	Ea      orNone
 	NoEa    string
 	Resting int
-	Share   orNone
-	Turns   orNone // product per catalyst, 1/s
+	Counted int      // species whose total Shares are of; −1: none
+	Shares  []orNone // by species
+	Turns   orNone   // product per catalyst, 1/s
 	Cycle   *controlCycle
 	NoCycle string
 	Assumes []string
@@ -82,7 +86,7 @@ func (q *controlPoint) keep(r *control.Result, labels []string) {
 		q.States = append(q.States, controlState{X: rounded(s.X), Factor: orNone(s.Factor), RatioX: rounded(s.RatioX), RatioFactor: orNone(s.RatioFactor), Raises: s.Raises, WhyNot: s.WhyNot})
 	}
 	q.Ea, q.NoEa = orNone(r.ActivationEnergy), r.NoActivationEnergy
-	q.Resting, q.Share, q.Turns, q.NoCycle = r.Resting, orNone(r.RestingShare), orNone(r.Turnover), r.NoCycle
+	q.Resting, q.Counted, q.Shares, q.Turns, q.NoCycle = r.Resting, r.Counted, orNones(r.Shares), orNone(r.Turnover), r.NoCycle
 	if r.Cycle == nil {
 		return
 	}
@@ -96,6 +100,14 @@ func (q *controlPoint) keep(r *control.Result, labels []string) {
 		}
 		q.Cycle.Levels = append(q.Cycle.Levels, k)
 	}
+}
+
+// share is how much of the total that counts it is in a species.
+func (q *controlPoint) share(species int) orNone {
+	if species < 0 || species >= len(q.Shares) {
+		return none()
+	}
+	return q.Shares[species]
 }
 
 // besideText words what stands beside a level: "S + 2 X", "P less L".

@@ -34,7 +34,7 @@ type energySource struct {
 type speciesSource struct {
 	Name string `key:"*"`
 	energySource
-	Forms   int    `key:"forms"`
+	Forms   *int   `key:"forms"`
 	Formula string `key:"formula"`
 }
 

@@ -71,10 +71,11 @@ type restValue struct {
 }
 
 func (s *equilibriumSource) check() fault.Problems {
+	ps := distinct("at", s.At)
 	if len(s.Charge) == 0 {
-		return fault.Problems{problem([]string{"charge"}, "nothing is charged", "name a species and its concentration, such as { A = \"0.20 M\" }")}
+		ps = append(ps, problem([]string{"charge"}, "nothing is charged", "name a species and its concentration, such as { A = \"0.20 M\" }"))
 	}
-	return nil
+	return ps
 }
 
 func (s *equilibriumSource) rest(m *kinetics.Mechanism) (equilibriumValue, error) {

@@ -34,6 +34,47 @@ func (b *builder) diffusion(m *kinetics.Mechanism, n *kinetics.Network, T unit.Q
 	}
 }
 
+// plainNumbers refuses what makes no sense whatever the states are.
+func (s *mechanismSource) plainNumbers() fault.Problems {
+	ps := append(temperature([]string{"temperature"}, &s.Temperature), distinct("at", s.At)...)
+	ps = append(ps, exactly([]string{"viscosity"}, s.Viscosity)...)
+	if c := s.HalfLifeAt; c != nil {
+		ps = append(ps, exactly([]string{"half-life-at"}, c)...)
+		if !(c.SI > 0) {
+			ps = append(ps, problem([]string{"half-life-at"}, fmt.Sprintf("at %q of the other molecules nothing has a half-life", *c), "give a concentration above 0, such as \"0.2 M\""))
+		}
+	}
+	if l := s.LowModes; l != nil {
+		ps = append(append(ps, exactly([]string{"low-modes", "below"}, l.Below)...), exactly([]string{"low-modes", "moment"}, l.Moment)...)
+	}
+	deviation := func(path []string, q *unit.Quantity) {
+		ps = append(ps, exactly(path, q)...)
+		if q != nil && q.SI < 0 {
+			ps = append(ps, problem(path, fmt.Sprintf("a standard deviation of %s makes no sense", *q), "give 0 or more"))
+		}
+	}
+	if e := s.Error; e != nil {
+		for _, q := range []struct {
+			key string
+			q   *unit.Quantity
+		}{{"species", e.Species}, {"step", e.Step}, {"shared-species", e.SharedSpecies}, {"shared-step", e.SharedStep}} {
+			deviation([]string{"error", q.key}, q.q)
+		}
+	}
+	for i := range s.Shared {
+		deviation([]string{"shared", fmt.Sprint(i + 1), "sd"}, &s.Shared[i].SD)
+	}
+	for _, st := range s.Step {
+		for _, q := range []struct {
+			key string
+			q   *unit.Quantity
+		}{{"at", st.At}, {"at-back", st.AtBack}, {"at-K", st.AtK}} {
+			ps = append(ps, temperature([]string{"step", st.Name, q.key}, q.q)...)
+		}
+	}
+	return ps
+}
+
 // mirror checks that the enantiomers exist and have one energy.
 func (b *builder) mirror(m *kinetics.Mechanism) {
 	names := b.src.Enantiomers
@@ -42,6 +83,10 @@ func (b *builder) mirror(m *kinetics.Mechanism) {
 	}
 	if len(names) != 2 {
 		b.fault([]string{"enantiomers"}, fmt.Sprintf("%d enantiomers are named", len(names)), "name the two of one pair, such as [\"R\", \"S\"]")
+		return
+	}
+	if names[0] == names[1] {
+		b.fault([]string{"enantiomers", "2"}, fmt.Sprintf("%q is named twice", names[1]), "name the two of one pair")
 		return
 	}
 	var pair []kinetics.Species

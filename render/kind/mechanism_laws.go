@@ -44,6 +44,14 @@ func stepFlags(st kinetics.Step, row stepValue) []string {
 	return flags
 }
 
+// limited tells whether diffusion has a part in the rate of a step.
+func limited(st kinetics.Step) bool {
+	if st.Limited || st.Law == nil || st.Law.Kind == kinetics.Measured {
+		return st.Limited
+	}
+	return kinetics.Molecules(st.From) > 1 || kinetics.Molecules(st.To) > 1
+}
+
 // lawAssumes is what the results of a step with a law rest on.
 func lawAssumes(st kinetics.Step) []string {
 	if st.Law == nil {
@@ -144,7 +152,7 @@ func (s *mechanismSource) lawAssumptions(v mechanismValue) []string {
 	energies, limit := false, false
 	for _, st := range v.Model.Steps {
 		energies = energies || st.Law == nil
-		limit = limit || st.Limited || st.Law != nil && st.Law.Kind != kinetics.Measured
+		limit = limit || limited(st)
 	}
 	if energies {
 		out = append(out, "Transmission coefficients and path degeneracies are 1 unless the block says otherwise; they act in both directions.")
@@ -274,7 +282,7 @@ func (s *mechanismSource) moleculeMethod(v mechanismValue) string {
 	case thermo.Floor:
 		text += fmt.Sprintf("; modes below %s cm⁻¹ count as if at it", unit.Digits(low.Cutoff/100, 3))
 	case thermo.FreeRotor:
-		text += fmt.Sprintf("; the entropy of low modes turns into that of a free rotor about %s cm⁻¹ (Grimme 2012, exponent %g, mean moment of inertia %g kg m²)", unit.Digits(low.Cutoff/100, 3), low.Exponent, low.Moment)
+		text += fmt.Sprintf("; the entropy of low modes turns into that of a free rotor about %s cm⁻¹ (Grimme 2012, exponent %g, mean moment of inertia %s kg m²)", unit.Digits(low.Cutoff/100, 3), low.Exponent, unit.PrintBare(low.Moment, plain, unit.FormPlain))
 	default:
 		text += "; low modes are taken as harmonic"
 	}

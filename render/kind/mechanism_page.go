@@ -12,10 +12,7 @@ import (
 func (s *mechanismSource) present(v mechanismValue, sheet *paper.Sheet) {
 	m := v.Model
 	energy := or(s.Energies, "kcal/mol")
-	beside := "kJ/mol"
-	if energy == "kJ/mol" {
-		beside = "kcal/mol"
-	}
+	_, beside := energyUnits(energy)
 	var sure []string
 	for i, T := range s.temperatures() {
 		cond := ConditionText(T)
@@ -40,14 +37,17 @@ func (s *mechanismSource) present(v mechanismValue, sheet *paper.Sheet) {
 				c := value(quantity, present)
 				if present && !math.IsNaN(x) {
 					c.Text = sheet.Bare(key(quantity)).Text
-					c.Beside = unit.Print(x, unit.Must(beside, unit.MolarEnergy), unit.FormEnergy)
+					c.Beside = unit.Print(x, beside, unit.FormEnergy)
 				}
 				return c
 			}
 			name := paper.Text(or(st.Label, st.Name))
 			name.Flags = stepFlags(st, row)
-			life := value("half-life", row.HalfLife != 0)
-			if row.HalfLifeBack != 0 {
+			if len(s.temperatures()) > 1 && limited(st) {
+				name.Flags = append(name.Flags, "one viscosity at all temperatures")
+			}
+			life := value("half-life", row.HalfLife != 0 && s.showsLife(row.Molecules))
+			if row.HalfLifeBack != 0 && s.showsLife(row.MoleculesBack) {
 				life.Beside = "back " + sheet.Value(key("half-life-back")).Text
 			}
 			chi := sheet.Value(key("position"))
@@ -60,13 +60,16 @@ func (s *mechanismSource) present(v mechanismValue, sheet *paper.Sheet) {
 				value("rate", true), value("equilibrium-constant", st.Returns), life, chi,
 			})
 		}
+		if s.hidesLives(v.Steps[i]) {
+			t.Notes = append(t.Notes, "Half-lives of steps of more than one molecule depend on concentrations: state half-life-at to see them.")
+		}
 		sheet.Table(t)
 		for _, st := range m.Steps {
 			at := "/" + st.Name + "@" + cond
 			sure = append(sure, "barrier"+at, "rate"+at)
 		}
 		for j, st := range m.Steps {
-			if v.Steps[i][j].HalfLife != 0 {
+			if row := v.Steps[i][j]; row.HalfLife != 0 && s.showsLife(row.Molecules) {
 				sure = append(sure, "half-life/"+st.Name+"@"+cond)
 			}
 			if s.racemises(m, st) {
@@ -82,7 +85,7 @@ func (s *mechanismSource) present(v mechanismValue, sheet *paper.Sheet) {
 	presentRacemisation(s, v, sheet)
 	s.presentMolecules(v, sheet)
 	sheet.Given(s.energyTable(v))
-	sheet.Intervals(sure...)
+	intervals(sheet, sure...)
 	for _, text := range s.methods(v) {
 		sheet.Method(text)
 	}
@@ -96,7 +99,7 @@ func (s *mechanismSource) present(v mechanismValue, sheet *paper.Sheet) {
 		change = change || row.Change != 0
 	}
 	sheet.Assumption("Half-lives are those of the one direction alone, as if nothing came back.")
-	if several {
+	if several && s.HalfLifeAt != nil {
 		sheet.Assumption(fmt.Sprintf("The half-life of a step of more than one molecule is that of the first reactant that is used up, with all others held at %s; where several molecules of it react, from that concentration to half of it.", s.others()))
 	}
 	if change {

@@ -2,6 +2,9 @@ package kind
 
 import (
 	"fmt"
+	"math"
+	"slices"
+	"strconv"
 	"strings"
 
 	"saddlebook/kinetics"
@@ -36,13 +39,14 @@ func (s *mechanismSource) standardWords() string {
 		}
 	}
 	T := s.temperatures()[0]
+	energy, _ := energyUnits(s.Energies)
 	for _, p := range []struct {
 		name     string
 		pressure float64
 	}{{"1 atm", unit.Atmosphere}, {"1 bar", unit.Bar}} {
 		if given == p.name || len(others[p.name]) > 0 {
 			shift := rate.Standard{Pressure: p.pressure}.Shift(T.SI)
-			text += fmt.Sprintf("; from %s each is raised by RT ln(c° RT/p°), %s at %s", p.name, unit.Print(shift, unit.Must("kcal/mol"), unit.FormEnergy), unit.Print(T.SI, T.Unit, unit.FormPlain))
+			text += fmt.Sprintf("; from %s each is raised by RT ln(c° RT/p°), %s at %s", p.name, unit.Print(shift, energy, unit.FormEnergy), unit.Print(T.SI, T.Unit, unit.FormPlain))
 		}
 	}
 	return text + "."
@@ -130,10 +134,25 @@ func reactionText(m *kinetics.Mechanism, s kinetics.Step) string {
 	return side(s.From) + arrow + side(s.To)
 }
 
+// showsLife tells whether the page has the half-life of a step of so many
+// molecules: of more than one only at a concentration that the author states,
+// since nobody works at 1 M of a catalyst.
+func (s *mechanismSource) showsLife(molecules int) bool {
+	return molecules == 1 || s.HalfLifeAt != nil
+}
+
+// hidesLives tells whether the page leaves a half-life out for want of a
+// concentration.
+func (s *mechanismSource) hidesLives(rows []stepValue) bool {
+	return slices.ContainsFunc(rows, func(row stepValue) bool {
+		return row.HalfLife != 0 && !s.showsLife(row.Molecules) || row.HalfLifeBack != 0 && !s.showsLife(row.MoleculesBack)
+	})
+}
+
 // halfLifeHead names the concentration where a half-life depends on one.
 func (s *mechanismSource) halfLifeHead(v mechanismValue) string {
 	for _, row := range v.Steps[0] {
-		if row.Molecules > 1 {
+		if s.HalfLifeAt != nil && (row.Molecules > 1 || row.HalfLifeBack != 0 && row.MoleculesBack > 1) {
 			return "Half-life at " + s.others()
 		}
 	}
@@ -161,7 +180,7 @@ func (s *mechanismSource) energyTable(v mechanismValue) paper.Table {
 			rates[kinetics.AlikeName(st.Name, i+1)] = st
 		}
 	}
-	given := func(name string, tabled thermo.Energy, unknown bool) (string, []string) {
+	given := func(name string, tabled thermo.Energy) (string, []string) {
 		e, written := inBlock[name]
 		var remarks []string
 		if e.Standard != "" {
@@ -170,24 +189,34 @@ func (s *mechanismSource) energyTable(v mechanismValue) paper.Table {
 		switch {
 		case len(rates[name].rates()) > 0:
 			return rates[name].words(), remarks
-		case unknown:
-			return "none", append(remarks, "follows from the constants that steps state, as far as it does")
 		case !written || e.none():
 			g := unit.Print(tabled.At(v.Model.Temperature), unit.Must(or(s.Energies, "kcal/mol"), unit.MolarEnergy), unit.FormEnergy)
 			return "G " + g, append(remarks, "sum of "+listWords(s.Table.Sum)+" in "+s.Table.File)
 		}
 		return e.words(), remarks
 	}
+	var without []string
 	for _, sp := range v.Model.Species {
-		text, remarks := given(sp.Name, sp.Energy, sp.Unknown)
+		if sp.Unknown {
+			name := sp.Name
+			if sp.Label != "" {
+				name += " (" + sp.Label + ")"
+			}
+			without = append(without, name)
+			continue
+		}
+		text, remarks := given(sp.Name, sp.Energy)
 		if sp.Forms > 1 {
 			remarks = append(remarks, fmt.Sprintf("stands for %d forms", sp.Forms))
 		}
-		row(sp.Name, sp.Label, text, append(remarks, fromDefaults(text, sp.SD)...))
+		row(sp.Name, sp.Label, text, append(remarks, s.fromDefaults(text, sp.SD)...))
 	}
 	for _, st := range v.Model.Steps {
-		text, remarks := given(st.Name, st.Energy, false)
-		row(st.Name, st.Label, text, append(remarks, fromDefaults(text, st.SD)...))
+		text, remarks := given(st.Name, st.Energy)
+		row(st.Name, st.Label, text, append(remarks, s.fromDefaults(text, st.SD)...))
+	}
+	if len(without) > 0 {
+		t.Notes = append(t.Notes, "Without an energy of their own: "+strings.Join(without, ", ")+".")
 	}
 	return t
 }
@@ -239,20 +268,51 @@ func quantityWords(list []named) []string {
 	var parts []string
 	for _, p := range list {
 		if p.q != nil {
-			parts = append(parts, minus.Replace(p.name+" "+p.q.String()))
+			parts = append(parts, p.name+" "+written(*p.q))
 		}
 	}
 	return parts
 }
 
-// minus sets the minus of numbers, and leaves that of powers of units.
-var minus = strings.NewReplacer(" -", " −")
+// written prints a quantity with all digits that its author wrote: 18.4 ± 0.6
+// kcal/mol, (1.2 ± 0.1) × 10⁻⁶ s⁻¹.
+func written(q unit.Quantity) string {
+	const space = "\u00a0"
+	value := unit.Quantity{SI: q.SI, Unit: q.Unit}
+	text, _, _ := strings.Cut(value.String(), " ")
+	if x, err := strconv.ParseFloat(text, 64); err == nil && x != 0 && math.Abs(x) < 1e-3 {
+		text = strconv.FormatFloat(x, 'e', -1, 64) // as every computed number is printed
+	}
+	number, power, scientific := strings.Cut(text, "e")
+	sd := ""
+	if q.SD != 0 {
+		x := unit.Unit{Scale: q.Unit.Scale}.Of(q.SD) // a difference, without offset
+		if scientific {
+			p, _ := strconv.Atoi(power) // String wrote a whole number there
+			x /= math.Pow(10, float64(p))
+		}
+		sd = " ± " + strconv.FormatFloat(x, 'g', 6, 64)
+	}
+	text = strings.Replace(number, "-", "−", 1) + sd
+	if scientific {
+		if sd != "" {
+			text = "(" + text + ")"
+		}
+		p, _ := strconv.Atoi(power)
+		text += space + "×" + space + "10" + unit.Superscript("a" + strconv.Itoa(p))[1:] // it raises what stands behind a letter
+	}
+	if q.Unit.Symbol != "" {
+		text += space + strings.ReplaceAll(unit.Superscript(q.Unit.Symbol), " ", space)
+	}
+	return text
+}
 
 // fromDefaults tells the error that a state has from the defaults of the
 // mechanism, since its energy as given shows none.
-func fromDefaults(given string, sd *float64) []string {
+func (s *mechanismSource) fromDefaults(given string, sd *float64) []string {
 	if sd == nil || *sd == 0 || strings.Contains(given, "±") {
 		return nil
 	}
-	return []string{"own error ± " + unit.Print(*sd, unit.Must("kcal/mol"), unit.FormEnergy) + " from error"}
+	energy, _ := energyUnits(s.Energies)
+	return []string{"own error ± " + unit.Print(*sd, energy, unit.FormEnergy) + " from error"}
 }

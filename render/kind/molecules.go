@@ -97,6 +97,9 @@ func (r reader) molecule(s moleculeSource, path []string) (given, *fault.Problem
 		m.Rotation = append(m.Rotation, b.SI)
 	}
 	if s.Mass != nil {
+		if s.Mass.SD != 0 {
+			return given{}, problem(at("mass"), fmt.Sprintf("the ± of %q is not carried on", *s.Mass), "give the ± on E")
+		}
 		m.Mass = s.Mass.SI
 	}
 	if s.Atoms != "" {

@@ -22,7 +22,7 @@ func init() {
 		Name:    "profile",
 		Doc:     "The free-energy profile of one or more paths through a mechanism.",
 		Method:  "Free-energy profiles at 1 M, completed by spectators so that all levels of a path have one composition.",
-		Version: 1,
+		Version: 2,
 		Fields: []schema.Field{
 			{Key: "id", Doc: "the name by which readings and claims call this block", Type: schema.Text, Name: true, Required: true, Example: "hills"},
 			usesMechanism,
@@ -32,7 +32,7 @@ func init() {
 			}},
 			{Key: "zero", Doc: "the states whose sum is the zero of the axis", Type: schema.Text, Default: "the first state of the first path", Wants: "species", Example: "R + X"},
 			{Key: "at", Doc: "the temperature", Type: schema.Amount, Dims: []unit.Dim{unit.Temperature}, Default: "the mechanism's own temperature", Example: "-78 °C"},
-			{Key: "energies", Doc: "the unit of the axis", Type: schema.Text, OneOf: []string{"kcal/mol", "kJ/mol", "eV", "cm-1"}, Default: "kcal/mol"},
+			{Key: "energies", Doc: "the unit of the axis", Type: schema.Text, OneOf: []string{"kcal/mol", "kJ/mol", "eV", "cm-1"}, Default: "that of the mechanism"},
 			{Key: "sides", Doc: "two paths from one reactant, drawn to its left and right", Type: schema.Flag, Default: "false"},
 			{Key: "caption", Doc: "what the figure shows", Type: schema.Text, Example: "Two ways from enone 3"},
 		},
@@ -69,6 +69,7 @@ type pathSource struct {
 
 type profileValue struct {
 	T       unit.Quantity
+	Unit    string // of energies in the mechanism
 	Paths   [][]levelValue
 	Zero    string
 	Assumes []string
@@ -83,7 +84,7 @@ type levelValue struct {
 }
 
 func (s *profileSource) check() fault.Problems {
-	var ps fault.Problems
+	ps := temperature([]string{"at"}, s.At)
 	for i, p := range s.Path {
 		if len(p.Through) == 1 {
 			ps = append(ps, problem([]string{"path", fmt.Sprint(i + 1), "through"}, "the path has one element, and a path leads from a state over a step to a state", "write states and steps in turn, such as [\"R + X\", \"TSa\", \"A\"]"))
@@ -100,7 +101,7 @@ func (s *profileSource) check() fault.Problems {
 
 func (s *profileSource) walk(m *kinetics.Mechanism) (profileValue, error) {
 	T := s.temperature(m)
-	v := profileValue{T: T, Assumes: m.Held(T.SI), Zero: s.Zero}
+	v := profileValue{T: T, Unit: m.Energies, Assumes: m.Held(T.SI), Zero: s.Zero}
 	if v.Zero == "" && len(s.Path) > 0 && len(s.Path[0].Through) > 0 {
 		v.Zero = s.Path[0].Through[0]
 	}
@@ -212,8 +213,9 @@ func (s *profileSource) pathProblem(path int, err error, n *kinetics.Network) *f
 	return problem(at, err.Error(), "write states and steps in turn, such as [\"R + X\", \"TSa\", \"A\"]")
 }
 
-func (s *profileSource) unit() unit.Unit {
-	return unit.Must(or(s.Energies, "kcal/mol"), unit.MolarEnergy)
+func (s *profileSource) unit(v profileValue) unit.Unit {
+	first, _ := energyUnits(or(s.Energies, v.Unit))
+	return first
 }
 
 func (s *profileSource) results(v profileValue) []Result {
@@ -226,7 +228,7 @@ func (s *profileSource) results(v profileValue) []Result {
 			}
 			seen[l.Item] = true
 			out = append(out, Result{Key: Key{ID: s.ID, Quantity: "level", Item: l.Item, Condition: ConditionText(v.T)},
-				Value: Value(l.G, "none"), Unit: s.unit(), Form: unit.FormEnergy, Assumes: v.Assumes})
+				Value: Value(l.G, "none"), Unit: s.unit(v), Form: unit.FormEnergy, Assumes: v.Assumes})
 		}
 	}
 	return out
@@ -234,7 +236,7 @@ func (s *profileSource) results(v profileValue) []Result {
 
 func (s *profileSource) present(v profileValue, sheet *paper.Sheet) {
 	at := unit.Print(v.T.SI, v.T.Unit, unit.FormPlain)
-	u := s.unit()
+	u := s.unit(v)
 	p := diagram.Profile{ID: s.ID, Unit: u.Symbol, Zero: v.Zero, Sides: s.Sides,
 		Title: or(s.Caption, fmt.Sprintf("Free-energy profile at %s", at))}
 	numbers := paper.Table{Caption: fmt.Sprintf("Levels at %s above %s", at, v.Zero),

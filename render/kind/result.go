@@ -85,8 +85,13 @@ func (r Result) Print(in string) (string, error) {
 				return "", err
 			}
 			u = asked
-			if form == unit.FormSpan {
-				form = unit.FormPlain // a fixed unit was asked for
+			switch form { // a fixed unit was asked for
+			case unit.FormSpan:
+				form = unit.FormPlain
+			case unit.FormMolar:
+				if r.Value.Kind == Real {
+					return unit.PrintBare(r.Value.Value, u, form) + "\u00a0" + u.Symbol, nil
+				}
 			}
 		}
 	}

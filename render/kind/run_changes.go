@@ -79,6 +79,9 @@ func (s *runSource) doses(m *kinetics.Mechanism, base, end float64) ([]course.Do
 		if dose.Species < 0 && d.Species != "" {
 			ps = append(ps, unknownSpecies(m, d.Species, path("species")))
 		}
+		if bad := tooMuch(path("amount"), d.Amount, base); bad != nil {
+			ps = append(ps, bad)
+		}
 		switch q := d.Amount; {
 		case q.SI < 0:
 			ps = append(ps, problem(path("amount"), fmt.Sprintf("%q is negative", q), "dose 0 or more; what goes away is a removal"))

@@ -1,6 +1,7 @@
 package kind
 
 import (
+	"cmp"
 	"fmt"
 	"math"
 	"slices"
@@ -16,48 +17,26 @@ func (s *runSource) figure(v runValue, sheet *paper.Sheet) {
 		return
 	}
 	c := diagram.TimeCourse{ID: s.ID, Title: or(s.Caption, ""), Programme: v.nodes(), Events: s.events(v)}
+	caption := or(s.Caption, "The run over time") + "."
 	if lines, ok := s.shareLines(v, sheet); ok {
 		c.Share, c.Axis, c.Lines = true, "share of "+v.basisLabel()+" charged", lines
 	} else {
-		c.Lines, c.Unit = s.amountLines(v, sheet)
+		var apart []int
+		c.Lines, c.Unit, apart = s.amountLines(v)
+		for _, i := range apart {
+			caption += fmt.Sprintf(" Not drawn, being in large excess: %s.", v.Labels[i])
+		}
 	}
-	c.Log = v.early()
+	if c.Log = v.early(); c.Log {
+		caption += " The time axis is logarithmic: most happens early."
+	}
 	scene, err := c.Scene()
 	if err != nil {
 		sheet.Fail(err)
 		return
 	}
 	scene.Desc += " " + caution // it goes where the figure goes
-	sheet.Figure(paper.Figure{Scene: scene, Caption: or(s.Caption, "The run over time") + ".", Numbers: numbersOf(c)})
-}
-
-// numbersOf lists what the lines show at some of their times, evenly spread.
-func numbersOf(c diagram.TimeCourse) paper.Table {
-	t := paper.Table{Caption: "The lines of the figure", Columns: []paper.Column{{Head: "Time", Number: true}}}
-	for _, l := range c.Lines {
-		t.Columns = append(t.Columns, paper.Column{Head: l.Label, Unit: c.Unit, Number: true})
-	}
-	times := c.Lines[0].T
-	const rows = 16
-	end, next := times[len(times)-1], 0.0
-	for k, at := range times {
-		if at < next && k < len(times)-1 {
-			continue
-		}
-		for next <= at {
-			next += end / rows
-		}
-		row := []paper.Cell{paper.Text(unit.Span(at))}
-		for _, l := range c.Lines {
-			text := unit.Digits(l.Y[k], 3)
-			if c.Share {
-				text = unit.Percent(l.Y[k])
-			}
-			row = append(row, paper.Text(text))
-		}
-		t.Rows = append(t.Rows, row)
-	}
-	return t
+	sheet.Figure(paper.Figure{Scene: scene, Caption: caption, Numbers: s.numbers(v, c)})
 }
 
 // mostLines is how many lines one figure has.
@@ -66,10 +45,22 @@ const mostLines = 8
 // minor is how much of a species there must be, against the largest, for a line.
 const minor = 0.02
 
-// line is a line of the trace.
+// points are those of the trace, and those asked for where it has none.
+func (v *runValue) points() []runPoint {
+	out := slices.Clone(v.Trace)
+	for _, q := range v.reached() {
+		k, found := slices.BinarySearchFunc(out, q.T, func(p runPoint, t float64) int { return cmp.Compare(p.T, t) })
+		if !found {
+			out = slices.Insert(out, k, q)
+		}
+	}
+	return out
+}
+
+// line is a line over the points.
 func (v *runValue) line(name, label, text string, y func(runPoint) float64) diagram.TimeLine {
 	l := diagram.TimeLine{Name: name, Label: label, Text: text}
-	for _, q := range v.Trace {
+	for _, q := range v.points() {
 		l.T = append(l.T, q.T)
 		l.Y = append(l.Y, y(q))
 	}
@@ -77,10 +68,11 @@ func (v *runValue) line(name, label, text string, y func(runPoint) float64) diag
 }
 
 // shareLines draws what became of the basis: what is left of it, the yields, and
-// intermediates of which there is some. It is not ok where there is no basis or
-// something is more than all of it.
+// intermediates that hold some of it. It is not ok where there is no basis, where
+// something is dosed or a reagent runs out, which shares would not show, and where
+// something is more than all of the basis.
 func (s *runSource) shareLines(v runValue, sheet *paper.Sheet) ([]diagram.TimeLine, bool) {
-	if v.Basis < 0 || len(s.Products) == 0 {
+	if v.Basis < 0 || len(s.Products) == 0 || len(s.Doses) > 0 || len(v.scarce()) > 0 {
 		return nil, false
 	}
 	share := func(mol float64) float64 { return math.Max(0, mol) / float64(v.BasisCharged) }
@@ -102,10 +94,11 @@ func (s *runSource) shareLines(v runValue, sheet *paper.Sheet) ([]diagram.TimeLi
 		lines = append(lines, l)
 	}
 	for _, i := range v.main(len(v.Names)) {
-		if drawn[i] || v.Charged[i] > 0 || len(lines) >= mostLines {
+		holds := float64(v.Holds[i])
+		if drawn[i] || !(holds > 0) || len(lines) >= mostLines {
 			continue
 		}
-		l := v.line("species "+v.Names[i], v.Labels[i], "", func(q runPoint) float64 { return share(q.C[i]) })
+		l := v.line("species "+v.Names[i], v.Labels[i], "", func(q runPoint) float64 { return share(holds * q.C[i]) })
 		if slices.Max(l.Y) >= minor {
 			lines = append(lines, l)
 		}
@@ -121,21 +114,35 @@ func (s *runSource) shareLines(v runValue, sheet *paper.Sheet) ([]diagram.TimeLi
 	return lines, len(lines) <= 12
 }
 
-// amountLines draws concentrations: of the products and of the main species.
-func (s *runSource) amountLines(v runValue, sheet *paper.Sheet) ([]diagram.TimeLine, string) {
-	most := 0.0
-	for _, q := range v.Trace {
-		for _, c := range q.C {
-			most = math.Max(most, c)
+// What is charged in less than catalytic equivalents of the basis counts as a
+// catalyst, and what is in more than excess equivalents hides the rest in a figure.
+const (
+	catalytic = 0.2
+	excess    = 5
+)
+
+// scarce are the reagents that run out before the basis does: most of one is used
+// up, and less is left of it.
+func (v *runValue) scarce() []int {
+	if v.Basis < 0 || len(v.Trace) == 0 {
+		return nil
+	}
+	last, base := v.Trace[len(v.Trace)-1].C, float64(v.BasisCharged)
+	left := last[v.Basis] / base
+	var out []int
+	for i, c := range v.Charged {
+		if i != v.Basis && !(v.Holds[i] > 0) && c >= catalytic*base && last[i] < c/2 && last[i] < c*(left-0.01) {
+			out = append(out, i)
 		}
 	}
-	u := molar
-	for _, symbol := range []string{"mM", "µM", "nM"} {
-		if most < u.Base(0.01) {
-			u = unit.Must(symbol)
-		}
-	}
-	var lines []diagram.TimeLine
+	return out
+}
+
+// amountLines draws concentrations: of the products, of what is dosed, of the
+// basis and what runs out, and of the main species. apart are those in so large
+// an excess that they are left out.
+func (s *runSource) amountLines(v runValue) (lines []diagram.TimeLine, symbol string, apart []int) {
+	last := v.Trace[len(v.Trace)-1].C
 	drawn := map[int]bool{}
 	for g, product := range s.Products {
 		if len(lines) == mostLines {
@@ -144,16 +151,52 @@ func (s *runSource) amountLines(v runValue, sheet *paper.Sheet) ([]diagram.TimeL
 		for _, i := range v.Members[g] {
 			drawn[i] = true
 		}
-		l := v.line("product "+product.Name, v.Products[g], "", func(q runPoint) float64 { return u.Of(v.amount(g, q.C)) })
+		l := v.line("product "+product.Name, v.Products[g], unit.Print(v.amount(g, last), molar, unit.FormMolar), func(q runPoint) float64 { return v.amount(g, q.C) })
 		l.Emphasis = true
 		lines = append(lines, l)
 	}
-	for _, i := range v.main(mostLines) {
-		if !drawn[i] && len(lines) < mostLines {
-			lines = append(lines, v.line("species "+v.Names[i], v.Labels[i], sheet.Value("amount/"+v.Names[i]+"@end").Text, func(q runPoint) float64 { return u.Of(math.Max(0, q.C[i])) }))
+	main := slices.Concat(v.dosed(s), v.scarce())
+	if v.Basis >= 0 {
+		main = append(main, v.Basis)
+	}
+	for k, i := range slices.Concat(main, v.main(len(v.Names))) {
+		if drawn[i] {
+			continue
+		}
+		drawn[i] = true
+		if k >= len(main) && v.Basis >= 0 && v.Charged[i] > excess*float64(v.BasisCharged) {
+			apart = append(apart, i)
+			continue
+		}
+		if len(lines) < maxLines(k < len(main)) {
+			lines = append(lines, v.line("species "+v.Names[i], v.Labels[i], unit.Print(math.Max(0, last[i]), molar, unit.FormMolar), func(q runPoint) float64 { return math.Max(0, q.C[i]) }))
 		}
 	}
-	return lines, u.Symbol
+	most := 0.0
+	for _, l := range lines {
+		most = math.Max(most, slices.Max(l.Y))
+	}
+	u := molar
+	for _, symbol := range []string{"mM", "µM", "nM"} {
+		if most < u.Base(0.05) {
+			u = unit.Must(symbol)
+		}
+	}
+	for _, l := range lines {
+		for k := range l.Y {
+			l.Y[k] = u.Of(l.Y[k])
+		}
+	}
+	return lines, u.Symbol, apart
+}
+
+// maxLines is how many lines a figure has before a species is left out: what is
+// dosed or runs out has some kept for it.
+func maxLines(needed bool) int {
+	if needed {
+		return mostLines + 4
+	}
+	return mostLines
 }
 
 // nodes are the corners of the programme.

@@ -3,6 +3,7 @@ package kind
 import (
 	"fmt"
 	"math"
+	"strings"
 
 	"saddlebook/content/fault"
 	"saddlebook/kinetics"
@@ -19,6 +20,12 @@ type runHeat struct {
 	At      float64  // K, at which the enthalpies are taken
 	Whole   orNone   // J/L, the most that the steps can release from all that is charged
 	Rise    orNone   // K, the adiabatic rise of that
+	Way     []string // the steps that it comes from
+	Dosed   orNone   // J/L, the part of Whole that comes with doses after the start
+	Run     orNone   // J/L, what the run sets free
+	RunRise orNone   // K, the adiabatic rise of that
+	Peak    orNone   // W/L, the highest rate
+	PeakAt  orNone   // s
 }
 
 // checkHeat says what is wrong with the density and the heat capacity.
@@ -47,7 +54,9 @@ func (s *runSource) checkHeat() fault.Problems {
 
 // heat computes the heat of a course.
 func (s *runSource) heat(m *kinetics.Mechanism, c *course.Course) (runHeat, *course.Heat, error) {
-	h := runHeat{PerRise: s.Density != nil && s.HeatCapacity != nil, At: m.Temperature, Whole: orNone(math.NaN()), Rise: orNone(math.NaN())}
+	none := orNone(math.NaN())
+	h := runHeat{PerRise: s.Density != nil && s.HeatCapacity != nil, At: m.Temperature,
+		Whole: none, Rise: none, Dosed: none, Run: none, RunRise: none, Peak: none, PeakAt: none}
 	perStep, missing := m.Enthalpy(h.At)
 	h.Unknown = missing
 	h.Shown = h.PerRise || len(missing) == 0
@@ -72,8 +81,48 @@ func (s *runSource) heat(m *kinetics.Mechanism, c *course.Course) (runHeat, *cou
 	if h.Unknown = heat.Missing; len(h.Unknown) > 0 {
 		return h, nil, nil
 	}
-	h.Whole, h.Rise = orNone(heat.Whole), orNone(heat.Rise)
+	h.Whole, h.Rise, h.Dosed = orNone(heat.Whole), orNone(heat.Rise), orNone(heat.Dosed)
+	h.Run, h.RunRise = orNone(heat.Run), orNone(heat.RunRise)
+	if heat.Peak*c.End > heatShare*heat.Whole {
+		h.Peak, h.PeakAt = orNone(heat.Peak), orNone(heat.PeakAt)
+	}
+	most := 0.0
+	for _, x := range heat.Way {
+		most = math.Max(most, math.Abs(x))
+	}
+	for i, x := range heat.Way {
+		switch name := n.Reactions[i].Name; {
+		case x > wayShare*most:
+			h.Way = append(h.Way, name)
+		case x < -wayShare*most:
+			h.Way = append(h.Way, name+" backwards")
+		}
+	}
 	return h, heat, nil
+}
+
+// wayShare is how often a step must turn, against the one that turns most, to be
+// named where the heat comes from.
+const wayShare = 1e-6
+
+// mostWays is how many steps are named there.
+const mostWays = 5
+
+// heatWords is a heat, with its adiabatic rise where there is one.
+func heatWords(heat, rise orNone) string {
+	text := unit.Print(float64(heat), heatUnit, unit.FormFactor)
+	if !rise.none() {
+		text += fmt.Sprintf(" (%s adiabatic)", unit.Print(float64(rise), kelvinUnit, unit.FormRise))
+	}
+	return text
+}
+
+// rise is the adiabatic rise of a heat.
+func (h runHeat) rise(heat orNone) orNone {
+	if h.Rise.none() || !(h.Whole > 0) {
+		return orNone(math.NaN())
+	}
+	return heat * h.Rise / h.Whole
 }
 
 // why says why the heat has no number.
@@ -91,12 +140,50 @@ func (v *runValue) explainHeat(sheet *paper.Sheet) {
 		return
 	}
 	if len(h.Unknown) > 0 {
-		sheet.Words(fmt.Sprintf("Heat: not known, since %s has no enthalpy. A sum over the other steps would be taken for the whole.", listWords(h.Unknown)))
+		sheet.Words(fmt.Sprintf("Heat: not known, since no enthalpy is given for %s. A sum over the other steps would be taken for the whole.", listWords(h.Unknown)))
 		return
 	}
-	if !h.Rise.none() {
-		sheet.Words(fmt.Sprintf("Adiabatic rise at full conversion, all at once: %s.", sheet.Value("adiabatic-rise").Text))
-	}
-	sheet.Method(fmt.Sprintf("Heat is from the enthalpies of the steps at %s, never from free energies, positive where it is set free. Heat left is the most that the listed steps could still release from what is there: the largest sum of −ΔH times extent that leaves no concentration below zero.", celsiusWords(h.At)))
+	sheet.Words(v.heatSentences(h))
+	sheet.Method(fmt.Sprintf("Heat is from the enthalpies of the steps at %s, never from free energies, positive where it is set free. Heat left is the most that the listed steps could still release from what is in the pot, doses to come left out: the largest sum of −ΔH times extent that leaves no concentration below zero. The highest rate does not count what comes within %s, a millionth of the programme, after its start and after whatever begins, ends or jumps.", celsiusWords(h.At), unit.Span(1e-6*v.planned())))
 	sheet.Assumption("Enthalpies, density and heat capacity are taken as constant over temperature and composition; heat of mixing, dosing and evaporation is left out.")
+}
+
+// planned is how long the programme lasts, s.
+func (v *runValue) planned() float64 {
+	sum := 0.0
+	for _, l := range v.Legs {
+		sum += l.Lasts
+	}
+	return sum
+}
+
+// heatSentences say how much heat there is, how much of it the run sets free,
+// what the doses bring, and when it comes fastest.
+func (v *runValue) heatSentences(h runHeat) string {
+	if !(h.Whole > 0) {
+		return "Heat: the listed steps set none free."
+	}
+	way := ""
+	if n := len(h.Way); n > mostWays {
+		way = fmt.Sprintf(", by way of %s and %d more steps", strings.Join(h.Way[:mostWays], ", "), n-mostWays)
+	} else if n > 0 {
+		way = ", by way of " + listWords(h.Way)
+	}
+	text := fmt.Sprintf("Heat: %s is the most that the listed steps can give%s. ", heatWords(h.Whole, h.Rise), way)
+	if h.Run >= 0 {
+		text += fmt.Sprintf("The run sets free %s by its end.", heatWords(h.Run, h.RunRise))
+	} else {
+		text += fmt.Sprintf("The run takes up %s by its end.", heatWords(-h.Run, -h.RunRise))
+	}
+	if h.Dosed > orNone(heatShare)*h.Whole {
+		text += fmt.Sprintf(" Of the most, %s comes with what is dosed after the start: heat left counts only what is in the pot.", heatWords(h.Dosed, h.rise(h.Dosed)))
+	}
+	if !h.Peak.none() {
+		when := "after " + timeWords(float64(h.PeakAt))
+		if float64(h.PeakAt) < 1e-4*v.End {
+			when = "at the start"
+		}
+		text += fmt.Sprintf(" Heat comes fastest %s, at %s.", when, unit.Print(float64(h.Peak), heatRateUnit, unit.FormFactor))
+	}
+	return text
 }

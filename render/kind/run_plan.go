@@ -42,6 +42,7 @@ type runPlan struct {
 	times []runTime // where results are wanted, in the order of the block; the end is among them
 	base  float64   // mol/L of the basis, doses included; NaN without one
 	named []bool    // by product: its units of the basis are stated
+	holds []float64 // by species: molecules of the basis in one of it; NaN: cannot be told
 }
 
 // A runTime is a time at which results are wanted.
@@ -61,7 +62,11 @@ func (s *runSource) plan(m *kinetics.Mechanism) (runPlan, fault.Problems) {
 	if len(p.prog.legs) == 0 {
 		return p, append(ps, problem([]string{"programme"}, "the programme has no leg", "write how long and where, such as ["+holdExample+"]"))
 	}
-	p.times, more = readTimes(s.ReportAt, p.prog.end())
+	end := p.prog.end()
+	if more.Failed() {
+		end = math.Inf(1) // a leg is missing: nobody knows
+	}
+	p.times, more = readTimes(s.ReportAt, end)
 	add(more)
 
 	r := &p.run
@@ -78,7 +83,7 @@ func (s *runSource) plan(m *kinetics.Mechanism) (runPlan, fault.Problems) {
 	if s.Basis != "" {
 		r.Basis = m.Index(s.Basis)
 	}
-	r.Doses, more = s.doses(m, p.base, p.prog.end())
+	r.Doses, more = s.doses(m, p.base, end)
 	add(more)
 	for _, d := range r.Doses {
 		total += d.Amount
@@ -89,7 +94,7 @@ func (s *runSource) plan(m *kinetics.Mechanism) (runPlan, fault.Problems) {
 	if r.Basis >= 0 && p.base == 0 {
 		ps = append(ps, problem([]string{"basis"}, fmt.Sprintf("of %q nothing is charged", s.Basis), "charge it, or take another basis"))
 	}
-	r.Removals, more = s.removals(m, p.prog.end())
+	r.Removals, more = s.removals(m, end)
 	add(more)
 
 	groups, more := groupsOf(m, s.Products, "products")
@@ -103,7 +108,8 @@ func (s *runSource) plan(m *kinetics.Mechanism) (runPlan, fault.Problems) {
 	slices.SortStableFunc(r.Pairs, func(a, b [2]int) int { return a[0] - b[0] })
 	add(s.checkEnantiomers())
 	add(s.checkHeat())
-	r.PerBasis, p.named, more = s.perBasis(m, p, len(ps) == 0)
+	r.Peaks = true
+	r.PerBasis, p.named, p.holds, more = s.perBasis(m, p, len(ps) == 0)
 	add(more)
 	r.Until, more = s.until(m, p)
 	add(more)
@@ -157,7 +163,7 @@ func (r *readyRun) simulate(ctx context.Context, m *kinetics.Mechanism) (runValu
 func readTimes(texts []string, end float64) ([]runTime, fault.Problems) {
 	var ps fault.Problems
 	var out []runTime
-	seen := map[float64]string{}
+	seen := map[string]string{} // the text, by how its key is compared
 	for i, text := range texts {
 		path := []string{"report-at", fmt.Sprint(i + 1)}
 		t := runTime{At: math.Inf(1), Text: "end"}
@@ -173,14 +179,14 @@ func readTimes(texts []string, end float64) ([]runTime, fault.Problems) {
 			}
 			t = runTime{At: q.SI, Text: ConditionText(q)}
 		}
-		if other, twice := seen[t.At]; twice {
+		if other, twice := seen[canonicalCondition(t.Text)]; twice {
 			ps = append(ps, problem(path, fmt.Sprintf("%q is the same time as %q", text, other), "list each time once"))
 			continue
 		}
-		seen[t.At] = text
+		seen[canonicalCondition(t.Text)] = text
 		out = append(out, t)
 	}
-	if _, listed := seen[math.Inf(1)]; !listed {
+	if _, listed := seen["end"]; !listed {
 		out = append(out, runTime{At: math.Inf(1), Text: "end"})
 	}
 	return out, ps
@@ -264,10 +270,10 @@ func (s *runSource) suggestProduct(name string) string {
 	return suggest(name, names)
 }
 
-// perBasis finds how many units of the basis a molecule of each product holds.
+// perBasis finds how many units of the basis a molecule of each product, and of
+// each species, holds.
 // tell is false where other faults leave it open what is charged.
-func (s *runSource) perBasis(m *kinetics.Mechanism, p runPlan, tell bool) ([]float64, []bool, fault.Problems) {
-	var ps fault.Problems
+func (s *runSource) perBasis(m *kinetics.Mechanism, p runPlan, tell bool) (ofProduct []float64, named []bool, ofSpecies []float64, ps fault.Problems) {
 	stated := map[string]float64{}
 	for _, u := range s.BasisUnits {
 		path := []string{"basis-units", u.Name}
@@ -282,9 +288,10 @@ func (s *runSource) perBasis(m *kinetics.Mechanism, p runPlan, tell bool) ([]flo
 		stated[u.Name] = u.Quantity.SI
 	}
 	if p.run.Basis < 0 {
-		return nil, nil, ps
+		return nil, nil, nil, ps
 	}
-	units, named := make([]float64, len(s.Products)), make([]bool, len(s.Products))
+	units := make([]float64, len(s.Products))
+	named = make([]bool, len(s.Products))
 	outside := make([]bool, len(m.Species))
 	for i, c := range p.run.Charge {
 		outside[i] = c > 0
@@ -317,5 +324,5 @@ func (s *runSource) perBasis(m *kinetics.Mechanism, p runPlan, tell bool) ([]flo
 				fmt.Sprintf("state it: basis-units = { %q = 1 }", product.Name)))
 		}
 	}
-	return units, named, ps
+	return units, named, found, ps
 }

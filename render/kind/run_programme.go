@@ -13,8 +13,9 @@ import (
 
 // A programme is the temperature of a run over time, leg after leg.
 type programme struct {
-	legs []course.Leg
-	ends []float64 // s, by leg
+	legs  []course.Leg
+	ends  []float64 // s, by leg
+	words []string  // by leg, in the units of its author
 }
 
 // end is when the programme is over, s.
@@ -116,7 +117,7 @@ func readProgramme(texts []string) (programme, fault.Problems) {
 			continue
 		}
 		p.ends = append(p.ends, p.end()+leg.Lasts)
-		p.legs = append(p.legs, leg)
+		p.legs, p.words = append(p.legs, leg), append(p.words, r.words)
 	}
 	return p, ps
 }
@@ -128,6 +129,8 @@ type legReader struct {
 	path  []string
 	first bool
 	now   float64 // K, where the leg begins; NaN: not known
+	span  string  // how long it lasts, as read
+	words string  // the leg, as read
 }
 
 func (r *legReader) fault(at int, msg, fix string) *fault.Problem {
@@ -171,6 +174,7 @@ func (r *legReader) hold(at int) (course.Leg, *fault.Problem) {
 	if bad != nil {
 		return course.Leg{}, bad
 	}
+	r.words = r.span + " at " + unit.Print(to.SI, to.Unit, unit.FormKelvin)
 	return course.Leg{To: to.SI, Lasts: lasts}, r.cold(after, to)
 }
 
@@ -205,8 +209,10 @@ func (r *legReader) ramp(start, at int) (course.Leg, *fault.Problem) {
 	if leg.To == r.now {
 		return leg, r.fault(r.skip(after), fmt.Sprintf("the ramp leads to %q, where it begins", to), "write a hold, such as "+holdExample+", or another temperature")
 	}
+	r.words = "ramp to " + unit.Print(to.SI, to.Unit, unit.FormKelvin)
 	if over >= 0 {
 		leg.Lasts, bad = r.lasts(span, len(r.text))
+		r.words += " over " + r.span
 		return leg, bad
 	}
 	perSecond, bad := r.rate(rate)
@@ -218,6 +224,7 @@ func (r *legReader) ramp(start, at int) (course.Leg, *fault.Problem) {
 		return leg, nil
 	}
 	leg.Lasts = math.Abs(leg.To-r.now) / perSecond
+	r.words += fmt.Sprintf(" at %s (%s)", strings.Join(strings.Fields(string(r.text[rate:])), "\u00a0"), timeWords(leg.Lasts))
 	return leg, nil
 }
 
@@ -227,6 +234,7 @@ func (r *legReader) lasts(from, to int) (float64, *fault.Problem) {
 	if bad == nil && !(q.SI > 0) {
 		bad = r.fault(r.skip(from), fmt.Sprintf("a leg of %q lasts no time", q), "write a time above 0, or leave the leg out")
 	}
+	r.span = spanWords(q)
 	return q.SI, bad
 }
 

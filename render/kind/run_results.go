@@ -3,14 +3,14 @@ package kind
 import (
 	"fmt"
 	"math"
+	"strings"
 
 	"saddlebook/kinetics/unit"
 )
 
-// Units of heat, which sources do not hold.
 var (
-	heatUnit     = unit.Unit{Symbol: "kJ/L", Dim: unit.Dim{Energy: 1, Volume: -1}, Scale: 1000}
-	heatRateUnit = unit.Unit{Symbol: "W/L", Dim: unit.Dim{Energy: 1, Volume: -1, Time: -1}, Scale: 1}
+	heatUnit     = unit.Must("kJ/L")
+	heatRateUnit = unit.Must("W/L")
 	kelvinUnit   = unit.Must("K")
 )
 
@@ -43,6 +43,14 @@ func (s *runSource) results(v runValue) []Result {
 		}
 		add(Key{Quantity: "unreacted-at-warming", Condition: w.Condition}, n, percent, unit.FormPercent)
 	}
+	for g, p := range v.Peaks {
+		item, why := s.Products[g].Name, "its yield is highest at the end"
+		if p.Yield == 0 {
+			why = unformed
+		}
+		add(Key{Quantity: "peak-yield", Item: item}, numberOr(p.Yield, "none"), percent, unit.FormPercent)
+		add(Key{Quantity: "peak-time", Item: item}, numberOr(p.T, why), seconds, unit.FormSpan)
+	}
 	for _, p := range v.Pairs {
 		item := s.pairName(p)
 		why := "control does not pass 0.5 within the run"
@@ -58,7 +66,15 @@ func (s *runSource) results(v runValue) []Result {
 	add(Key{Quantity: "end"}, Value(v.End, "none"), seconds, unit.FormSpan)
 	add(Key{Quantity: "ended-by"}, Number{Kind: Words, Text: s.endedBy(v)}, plain, unit.FormPlain)
 	if v.Heat.Shown {
-		add(Key{Quantity: "adiabatic-rise"}, numberOr(v.Heat.Rise, v.Heat.why()), kelvinUnit, unit.FormRise)
+		h := v.Heat
+		cool := "no heat is set free at any time"
+		if len(h.Unknown) > 0 {
+			cool = h.why()
+		}
+		add(Key{Quantity: "adiabatic-rise"}, numberOr(h.Rise, h.why()), kelvinUnit, unit.FormRise)
+		add(Key{Quantity: "rise-of-run"}, numberOr(h.RunRise, h.why()), kelvinUnit, unit.FormRise)
+		add(Key{Quantity: "peak-heat-rate"}, numberOr(h.Peak, cool), heatRateUnit, unit.FormFactor)
+		add(Key{Quantity: "peak-heat-rate-time"}, numberOr(h.PeakAt, cool), seconds, unit.FormSpan)
 	}
 	return out
 }
@@ -96,9 +112,6 @@ func (s *runSource) resultsAt(v runValue, q runPoint, add func(Key, Number, unit
 	}
 	for i, name := range v.Names {
 		put("amount", name, func() Number {
-			if math.Abs(q.C[i]) <= v.Floor {
-				return Value(0, "none") // what the integration cannot tell from nothing
-			}
 			return Value(q.C[i], "none")
 		}, molar, unit.FormMolar)
 	}
@@ -133,7 +146,7 @@ func (v *runValue) excess(r, s int, q runPoint) Number {
 	if v.unformed(q) || x+y <= v.Floor {
 		return nothing(unformed)
 	}
-	return Value((x-y)/(x+y), unformed)
+	return Value(inSteps((x-y)/(x+y), balanceSteps), unformed)
 }
 
 const unformed = "nothing has formed"
@@ -173,11 +186,13 @@ func (s *runSource) endedBy(v runValue) string {
 	if v.Ended < 0 || v.Ended >= len(s.Until) {
 		return "the programme"
 	}
-	return s.Until[v.Ended].words(s.Basis, func(name string) string { return name })
+	asIs := func(name string) string { return name }
+	return s.Until[v.Ended].words(s.Basis, asIs, asIs)
 }
 
-// words says what an until waits for; label says how a species is called.
-func (u untilSource) words(basis string, label func(string) string) string {
+// words says what an until waits for; label and product say how a species and a
+// product are called.
+func (u untilSource) words(basis string, label, product func(string) string) string {
 	value := func() string {
 		if u.Reaches == nil {
 			return ""
@@ -188,9 +203,10 @@ func (u untilSource) words(basis string, label func(string) string) string {
 	case u.Conversion != nil:
 		return fmt.Sprintf("conversion of %s reached %s", basis, u.Conversion.Text)
 	case u.Yield != "":
-		return fmt.Sprintf("yield of %s reached %s", u.Yield, value())
+		return fmt.Sprintf("yield of %s reached %s", product(u.Yield), value())
 	case u.Amount != "":
 		return fmt.Sprintf("%s reached %s", label(u.Amount), value())
 	}
-	return fmt.Sprintf("the ratio %s reached %s", u.Ratio, value())
+	a, b, _ := strings.Cut(u.Ratio, ":")
+	return fmt.Sprintf("the ratio %s:%s reached %s", product(strings.TrimSpace(a)), product(strings.TrimSpace(b)), value())
 }

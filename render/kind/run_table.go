@@ -25,7 +25,7 @@ func (v *runValue) reached() []runPoint {
 
 // timeCell heads a row.
 func (q runPoint) timeCell() paper.Cell {
-	text := unit.Span(q.T)
+	text := timeWords(q.T)
 	if q.Condition != "end" {
 		return paper.Text(spanTextWords(q.Condition, text))
 	}
@@ -50,6 +50,9 @@ func (s *runSource) table(v runValue, sheet *paper.Sheet) paper.Table {
 	column := func(head, key string) {
 		t.Columns = append(t.Columns, paper.Column{Head: head, Number: true})
 		keys = append(keys, key)
+	}
+	for _, i := range v.dosed(s) {
+		column(v.Labels[i]+" present", "amount/"+v.Names[i])
 	}
 	if v.Basis >= 0 {
 		column("conversion of "+v.basisLabel(), "conversion")
@@ -81,7 +84,11 @@ func (s *runSource) table(v runValue, sheet *paper.Sheet) paper.Table {
 		column("mass balance", "mass-balance")
 	}
 	if v.Heat.Shown && len(v.Heat.Unknown) == 0 {
-		column("heat left", "heat-left")
+		head := "heat left"
+		if len(s.Doses) > 0 {
+			head = "heat left in the pot"
+		}
+		column(head, "heat-left")
 	}
 	for _, q := range v.reached() {
 		at := "@" + q.Condition
@@ -105,12 +112,23 @@ func (s *runSource) table(v runValue, sheet *paper.Sheet) paper.Table {
 		t.Notes = append(t.Notes, fmt.Sprintf("Mass balance: %s left and in the listed products; what is missing is in species that are not listed, or was removed.", v.basisLabel()))
 	}
 	if s.dosesBasis() {
-		t.Notes = append(t.Notes, fmt.Sprintf("While %s is still added, conversion and yields are of what was added by then; the figure shows shares of all of it.", v.basisLabel()))
+		t.Notes = append(t.Notes, fmt.Sprintf("While %s is still added, conversion and yields are of what was added by then; the figure shows concentrations.", v.basisLabel()))
 	}
 	if v.Heat.PerRise && len(v.Heat.Unknown) == 0 {
-		t.Notes = append(t.Notes, "Heat left: beside it the adiabatic rise, if all of it came at once.")
+		t.Notes = append(t.Notes, "Heat left: the most that the listed steps can still give from what is in the pot; beside it the adiabatic rise, if all of it came at once.")
 	}
 	return t
+}
+
+// dosed are the species that are dosed, each once.
+func (v *runValue) dosed(s *runSource) []int {
+	var out []int
+	for _, d := range s.Doses {
+		if i := slices.Index(v.Names, d.Species); i >= 0 && !slices.Contains(out, i) {
+			out = append(out, i)
+		}
+	}
+	return out
 }
 
 // wordy tells that a result has words in place of a number, which stand below
@@ -181,9 +199,9 @@ func (v *runValue) main(n int) []int {
 	return out
 }
 
-// withDistinctInterval is withInterval where the ends differ in the digits shown.
+// withDistinctInterval is withInterval where the interval says more than the value.
 func withDistinctInterval(sheet *paper.Sheet, key string) paper.Cell {
-	if low, high, ok := strings.Cut(sheet.Interval(key), " to "); ok && low == high {
+	if i := sheet.Interval(key); i != "" && !telling(sheet.Value(key).Text, i) {
 		return sheet.Value(key)
 	}
 	return withInterval(sheet, key)

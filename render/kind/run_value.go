@@ -51,6 +51,7 @@ type runValue struct {
 	Members      [][]int   // species of each product
 	Units        []float64 // by product: molecules of the basis in one of it; nil without a basis
 	Stated       []bool    // by product: the block states its units
+	Holds        []orNone  // by species: molecules of the basis in one of it; nil without a basis, none where it cannot be told
 	Charged      []float64 // mol/L by species, doses included
 	Basis        int       // species; -1: none
 	BasisCharged orNone    // mol/L, doses included
@@ -61,6 +62,7 @@ type runValue struct {
 	Warmings     []warming
 	Trace        []runPoint
 	Pairs        []runPair
+	Peaks        []peak  // by product; nil without a basis
 	Lowest       float64 // the most negative concentration met, mol/L; 0: none
 	Floor        float64 // mol/L, below which amounts have no digits to rely on
 	Balance      float64 // the largest relative deviation of a conservation law
@@ -90,6 +92,14 @@ type warming struct {
 	Reached   bool
 	T         float64
 	Unreacted orNone // share of the basis charged by then
+	HeatLeft  orNone // J/L
+	HeatRise  orNone // K, adiabatic, of that
+}
+
+// peak is where the yield of a product is highest.
+type peak struct {
+	Yield orNone // of all the basis charged
+	T     orNone // s; none: it is highest at the end
 }
 
 // runPair is two products that compete.
@@ -103,7 +113,7 @@ type runPair struct {
 
 // value turns a course into what the block keeps.
 func (s *runSource) value(m *kinetics.Mechanism, p runPlan, c *course.Course) (runValue, error) {
-	v := runValue{Method: c.Method, Units: p.run.PerBasis, Stated: p.named, Charged: slices.Clone(p.run.Charge), Basis: p.run.Basis, BasisCharged: orNone(p.base),
+	v := runValue{Method: c.Method, Units: p.run.PerBasis, Stated: p.named, Holds: orNones(p.holds), Charged: slices.Clone(p.run.Charge), Basis: p.run.Basis, BasisCharged: orNone(p.base),
 		Legs: p.prog.legs, End: c.End, Ended: c.Ended, Lowest: c.Lowest, Floor: c.Floor, Balance: c.Balance, Warnings: c.Warnings}
 	for _, d := range p.run.Doses {
 		v.Charged[d.Species] += d.Amount
@@ -128,8 +138,10 @@ func (s *runSource) value(m *kinetics.Mechanism, p runPlan, c *course.Course) (r
 		return v, err
 	}
 	for _, pair := range c.Pairs {
-		if pair.Unreachable == "" {
-			pair.Unreachable = formsForGood(net, slices.Concat(v.Members[pair.A], v.Members[pair.B]))
+		if d := pair.Drain; pair.Unreachable != "" && d.Step >= 0 {
+			pair.Unreachable = d.Words(net.Reactions[d.Step].Name, v.Labels)
+		} else if pair.Unreachable == "" {
+			pair.Unreachable = formsForGood(net, v.Labels, slices.Concat(v.Members[pair.A], v.Members[pair.B]))
 		}
 		v.Pairs = append(v.Pairs, runPair{A: pair.A, B: pair.B, Coincide: pair.Coincide, Unreachable: pair.Unreachable,
 			Changeover: orNone(pair.Changeover), Even: orNone(pair.Even), ChangeoverKelvin: orNone(pair.ChangeoverKelvin), EvenKelvin: orNone(pair.EvenKelvin)})
@@ -143,10 +155,15 @@ func (s *runSource) value(m *kinetics.Mechanism, p runPlan, c *course.Course) (r
 		return v, err
 	}
 	point := func(q course.Point, h *course.HeatPoint) runPoint {
-		out := runPoint{Reached: true, T: q.T, Kelvin: q.Kelvin, C: q.C, Conversion: orNone(q.Conversion), Yields: orNones(q.Yields), Shares: orNones(q.Shares),
+		out := runPoint{Reached: true, T: q.T, Kelvin: q.Kelvin, C: v.aboveFloor(q.C), Conversion: orNone(q.Conversion), Yields: orNones(q.Yields), Shares: orNones(q.Shares),
 			Control: orNones(q.Control), Kinetic: orNones(q.Kinetic), Rest: orNones(q.Rest)}
+		for g := range out.Yields {
+			if v.amount(g, out.C) == 0 && !out.Yields[g].none() {
+				out.Yields[g] = 0
+			}
+		}
 		for i := range out.Control {
-			out.Control[i] = orNone(math.Round(q.Control[i]*controlSteps) / controlSteps)
+			out.Control[i] = orNone(inSteps(q.Control[i], controlSteps))
 			if v.Pairs[i].Unreachable != "" {
 				out.Control[i], out.Rest[i] = orNone(math.NaN()), orNone(math.NaN())
 			}
@@ -157,6 +174,12 @@ func (s *runSource) value(m *kinetics.Mechanism, p runPlan, c *course.Course) (r
 			out.HeatRate, out.HeatLeft, out.HeatRise = orNone(h.Rate), orNone(h.Left), orNone(h.Rise)
 			if math.Abs(h.Rate)*c.End < heatShare*heat.Whole {
 				out.HeatRate = 0
+			}
+			if h.Left < heatShare*heat.Whole {
+				out.HeatLeft = 0
+				if !out.HeatRise.none() {
+					out.HeatRise = 0
+				}
 			}
 		}
 		return out
@@ -183,12 +206,17 @@ func (s *runSource) value(m *kinetics.Mechanism, p runPlan, c *course.Course) (r
 		v.At = append(v.At, out)
 	}
 	for _, t := range p.prog.warmings() {
-		w := warming{T: t, Condition: spanText(t), Unreacted: orNone(math.NaN())}
+		none := orNone(math.NaN())
+		w := warming{T: t, Condition: spanText(t), Unreacted: none, HeatLeft: none, HeatRise: none}
 		if i := at(t); i >= 0 {
 			w.Reached, w.Unreacted = true, orNone(1-c.Report[i].Conversion)
+			if heat != nil {
+				w.HeatLeft, w.HeatRise = orNone(heat.Report[i].Left), orNone(heat.Report[i].Rise)
+			}
 		}
 		v.Warmings = append(v.Warmings, w)
 	}
+	v.Peaks = v.peaks(c)
 	for i, q := range c.Trace {
 		var h *course.HeatPoint
 		if heat != nil {
@@ -199,20 +227,56 @@ func (s *runSource) value(m *kinetics.Mechanism, p runPlan, c *course.Course) (r
 	return v, nil
 }
 
+// peakAbove is by how much, as a share of the basis, a yield must once have been
+// above that at the end to have a peak: half of the last digit printed.
+const peakAbove = 0.0005
+
+// peaks finds where the yields are highest.
+func (v *runValue) peaks(c *course.Course) []peak {
+	if v.Basis < 0 {
+		return nil
+	}
+	var out []peak
+	end := c.Report[len(c.Report)-1].C
+	for g, p := range c.Peaks {
+		share := func(mol float64) float64 { return v.Units[g] * mol / float64(v.BasisCharged) }
+		last := v.amount(g, v.aboveFloor(end))
+		best := peak{T: orNone(math.NaN()), Yield: orNone(share(math.Max(p.Amount, last)))}
+		switch {
+		case p.Amount <= v.Floor && last == 0:
+			best.Yield = 0
+		case share(p.Amount) > share(last)+peakAbove:
+			best.T = orNone(p.T)
+		}
+		out = append(out, best)
+	}
+	return out
+}
+
 // controlSteps are the parts of 1 to which a degree of control is kept: it is a
 // difference of shares that are right to 1e-9.
 const controlSteps = 1e8
 
-// balanceSteps are those to which a mass balance is kept.
+// balanceSteps are those to which a mass balance and an ee are kept: sums and
+// differences of amounts that are right to 1e-9.
 const balanceSteps = 1e9
 
+// inSteps rounds to so many parts of 1.
+func inSteps(x, steps float64) float64 {
+	if r := math.Round(x*steps) / steps; r != 0 {
+		return r
+	}
+	return 0 // and not −0
+}
+
 // heatShare is the part of all heat below which a rate counts as none, if it
-// went on over the whole run: what is left where two directions cancel.
+// went on over the whole run, and the heat left: what rounding leaves where two
+// directions cancel.
 const heatShare = 1e-9
 
 // formsForGood says why products have no equilibrium where reversible steps do
 // not join them and one of them forms by a step without return; "" if none does.
-func formsForGood(n *kinetics.Network, products []int) string {
+func formsForGood(n *kinetics.Network, labels []string, products []int) string {
 	joined := true
 	for _, p := range products {
 		_, ok := n.EquilibriumRatio(p, products[0])
@@ -224,7 +288,7 @@ func formsForGood(n *kinetics.Network, products []int) string {
 	for _, r := range n.Reactions {
 		for _, t := range r.To {
 			if !r.Returns && slices.Contains(products, t.Species) {
-				return "products form by steps without return: equilibrium is not reachable"
+				return fmt.Sprintf("equilibrium is not reachable, as step %s, without return, forms %s", r.Name, labels[t.Species])
 			}
 		}
 	}
@@ -257,7 +321,19 @@ func (v *runValue) balance(p runPlan, q course.Point) float64 {
 	if !counted {
 		found += q.C[v.Basis]
 	}
-	return math.Round(found/charged*balanceSteps) / balanceSteps
+	return inSteps(found/charged, balanceSteps)
+}
+
+// aboveFloor returns concentrations without what the integration cannot tell from
+// nothing.
+func (v *runValue) aboveFloor(c []float64) []float64 {
+	out := slices.Clone(c)
+	for i := range out {
+		if math.Abs(out[i]) <= v.Floor {
+			out[i] = 0
+		}
+	}
+	return out
 }
 
 // amount is how much there is of a product, mol/L.

@@ -4,6 +4,7 @@ import (
 	"fmt"
 	"math"
 	"slices"
+	"strconv"
 	"strings"
 
 	"saddlebook/kinetics/unit"
@@ -26,7 +27,11 @@ func (s *runSource) present(v runValue, sheet *paper.Sheet) {
 	cautionConditions(sheet)
 	for _, w := range v.Warmings {
 		if v.Basis >= 0 && w.Reached {
-			cautionWarming(sheet, w.T, v.Labels[v.Basis], sheet.Value("unreacted-at-warming@"+w.Condition).Text)
+			heat := ""
+			if w.HeatLeft > orNone(heatShare)*v.Heat.Whole {
+				heat = heatWords(w.HeatLeft, w.HeatRise)
+			}
+			cautionWarming(sheet, w.T, v.Labels[v.Basis], sheet.Value("unreacted-at-warming@"+w.Condition).Text, heat)
 		}
 	}
 }
@@ -35,26 +40,30 @@ func (s *runSource) present(v runValue, sheet *paper.Sheet) {
 func (s *runSource) conditions(v runValue) string {
 	var charged, done []string
 	for _, a := range s.Charge {
-		text := fmt.Sprintf("%s %s", v.label(a.Name), amountWords(a.Quantity))
-		if a.Quantity.Unit.Dim == unit.Equivalent {
-			text += fmt.Sprintf(" (%s)", unit.Print(a.Quantity.SI*float64(v.BasisCharged), molar, unit.FormMolar))
-		}
-		charged = append(charged, text)
+		charged = append(charged, fmt.Sprintf("%s (%s)", v.label(a.Name), v.amountInFull(a.Quantity)))
 	}
 	done = append(done, "Charged: "+listWords(charged)+".")
-	done = append(done, "Programme: "+strings.Join(v.legWords(), ", ")+".")
+	prog, _ := readProgramme(s.Programme)
+	done = append(done, "Programme: "+strings.Join(prog.words, ", ")+".")
+	for _, leg := range prog.jumps() {
+		if prog.begin(leg) > v.End {
+			break
+		}
+		done = append(done, fmt.Sprintf("From %s to %s the temperature changes at once, after %s.", celsiusWords(prog.before(leg)), celsiusWords(prog.legs[leg].To), timeWords(prog.begin(leg))))
+	}
 	for _, d := range s.Doses {
-		amount := amountWords(d.Amount)
 		when := ""
 		switch {
+		case d.At != nil && d.At.SI == 0:
+			when = "at once at the start"
 		case d.At != nil:
-			when = "at once at " + spanWords(*d.At)
+			when = "at once after " + spanWords(*d.At)
 		case d.From != nil && d.From.SI > 0:
-			when = fmt.Sprintf("evenly over %s from %s on", spanWords(*d.Over), spanWords(*d.From))
+			when = fmt.Sprintf("evenly over %s, from %s on", spanWords(*d.Over), spanWords(*d.From))
 		case d.Over != nil:
-			when = fmt.Sprintf("evenly over the first %s", spanWords(*d.Over))
+			when = "evenly over " + firstWords(*d.Over)
 		}
-		done = append(done, fmt.Sprintf("Added: %s of %s, %s.", amount, v.label(d.Species), when))
+		done = append(done, fmt.Sprintf("Added: %s (%s), %s.", v.label(d.Species), v.amountInFull(d.Amount), when))
 	}
 	for _, r := range s.Removal {
 		done = append(done, r.words(v.label(r.Species)))
@@ -73,6 +82,24 @@ func (v *runValue) label(name string) string {
 	return name
 }
 
+// productLabel is how pages call a product.
+func (s *runSource) productLabel(v *runValue, name string) string {
+	if g := s.product(name); g >= 0 {
+		return v.Products[g]
+	}
+	return name
+}
+
+// amountInFull is an amount, with its concentration where it is stated in terms
+// of the basis.
+func (v *runValue) amountInFull(q unit.Quantity) string {
+	text := amountWords(q)
+	if q.Unit.Dim == unit.Equivalent {
+		text += ", " + unit.Print(q.SI*float64(v.BasisCharged), molar, unit.FormMolar)
+	}
+	return text
+}
+
 // amountWords is a concentration, or an amount in terms of the basis.
 func amountWords(q unit.Quantity) string {
 	if q.Unit.Dim == unit.Equivalent {
@@ -82,29 +109,6 @@ func amountWords(q unit.Quantity) string {
 }
 
 func spanWords(q unit.Quantity) string { return unit.Print(q.SI, q.Unit, unit.FormPlain) }
-
-// legWords words the programme, up to where it ran.
-func (v *runValue) legWords() []string {
-	var out []string
-	for _, l := range v.Legs {
-		T := celsiusWords(l.To)
-		if l.Ramp {
-			out = append(out, fmt.Sprintf("ramp to %s over %s", T, lastsWords(l.Lasts)))
-		} else {
-			out = append(out, fmt.Sprintf("%s at %s", lastsWords(l.Lasts), T))
-		}
-	}
-	return out
-}
-
-// lastsWords is how long a leg lasts, as short as it can be said in full.
-func lastsWords(seconds float64) string {
-	q, err := unit.Parse(spanText(seconds), unit.Unit{}, unit.Time)
-	if err != nil {
-		return unit.Span(seconds)
-	}
-	return spanWords(q)
-}
 
 func celsiusWords(kelvin float64) string { return unit.Print(kelvin, celsius, unit.FormKelvin) }
 
@@ -134,12 +138,17 @@ func (r removalSource) words(label string) string {
 
 // endWords says what ended the run, where something could before its programme.
 func (s *runSource) endWords(v runValue) string {
+	product := func(name string) string { return s.productLabel(&v, name) }
 	if v.Ended >= 0 && v.Ended < len(s.Until) {
-		return fmt.Sprintf("Ended after %s: %s.", unit.Span(v.End), s.Until[v.Ended].words(v.basisLabel(), v.label))
+		return fmt.Sprintf("Ended after %s: %s.", timeWords(v.End), s.Until[v.Ended].words(v.basisLabel(), v.label, product))
 	}
 	var waits []string
 	for _, u := range s.Until {
-		waits = append(waits, strings.Replace(u.words(v.basisLabel(), v.label), " reached ", " reaches ", 1))
+		text := strings.Replace(u.words(v.basisLabel(), v.label, product), " reached ", " reaches ", 1)
+		if u.Conversion != nil || u.Yield != "" {
+			text = "the " + text
+		}
+		waits = append(waits, text)
 	}
 	return fmt.Sprintf("Ended with its programme: it would have stopped once %s.", strings.Join(waits, ", or "))
 }
@@ -164,6 +173,7 @@ func (s *runSource) readings(v runValue, sheet *paper.Sheet) []string {
 		if len(v.Pairs) > 1 {
 			of = fmt.Sprintf(" of %s and %s", a, b)
 		}
+		turns := distinctTimes([]float64{float64(p.Changeover), float64(p.Even)})
 		switch why := p.noControl(); {
 		case why != "":
 			if silent[why] == nil {
@@ -171,7 +181,7 @@ func (s *runSource) readings(v runValue, sheet *paper.Sheet) []string {
 			}
 			silent[why] = append(silent[why], a+" : "+b)
 		case !p.Changeover.none():
-			out = append(out, fmt.Sprintf("Control%s passes from kinetic to thermodynamic after %s at %s.", of, sheet.Value("changeover/"+item).Text, sheet.Value("changeover-temperature/"+item).Text))
+			out = append(out, fmt.Sprintf("Control%s passes from kinetic to thermodynamic after %s at %s%s.", of, turns[0], sheet.Value("changeover-temperature/"+item).Text, intervalWords(sheet, "changeover/"+item)))
 		case !last.Control[i].none():
 			side := "kinetic"
 			if float64(last.Control[i]) >= 0.5 {
@@ -180,7 +190,7 @@ func (s *runSource) readings(v runValue, sheet *paper.Sheet) []string {
 			out = append(out, fmt.Sprintf("Control%s does not change over: at the end it is %s (%s).", of, side, sheet.Value("control/"+item+"@end").Text))
 		}
 		if !p.Even.none() {
-			out = append(out, fmt.Sprintf("The ratio of %s to %s passes 1 after %s at %s.", a, b, sheet.Value("even/"+item).Text, sheet.Value("even-temperature/"+item).Text))
+			out = append(out, fmt.Sprintf("The ratio of %s to %s passes 1 after %s at %s%s.", a, b, turns[1], sheet.Value("even-temperature/"+item).Text, intervalWords(sheet, "even/"+item)))
 		}
 	}
 	for _, why := range reasons {
@@ -190,7 +200,49 @@ func (s *runSource) readings(v runValue, sheet *paper.Sheet) []string {
 		}
 		out = append(out, fmt.Sprintf("Control%s has no number: %s.", of, why))
 	}
+	for g, p := range v.Peaks {
+		if key := s.Products[g].Name; !p.T.none() {
+			out = append(out, fmt.Sprintf("%s peaks at a yield of %s after %s%s.", v.Products[g], sheet.Value("peak-yield/"+key).Text, timeWords(float64(p.T)), intervalWords(sheet, "peak-time/"+key)))
+		}
+	}
 	return out
+}
+
+// intervalWords is the interval of a result in brackets, where it says more than
+// the result.
+func intervalWords(sheet *paper.Sheet, key string) string {
+	if i := sheet.Interval(key); telling(sheet.Value(key).Text, i) {
+		return " (5 to 95 %: " + i + ")"
+	}
+	return ""
+}
+
+// telling tells that an interval says more than the value beside it: its ends
+// differ in the digits shown, by more than one in the last of three.
+func telling(value, interval string) bool {
+	low, high, ok := strings.Cut(interval, " to ")
+	if !ok || low == high {
+		return false
+	}
+	if value != low && value != high {
+		return true
+	}
+	number := func(text string) (float64, string, bool) {
+		digits, unit, _ := strings.Cut(text, "\u00a0")
+		x, err := strconv.ParseFloat(strings.Replace(digits, "\u2212", "-", 1), 64)
+		return x, unit, err == nil && !strings.HasPrefix(unit, "×")
+	}
+	a, unitA, okA := number(low)
+	b, unitB, okB := number(high)
+	if !okA || !okB || unitA != unitB {
+		return true
+	}
+	decimals := 0
+	if _, behind, ok := strings.Cut(strings.TrimSuffix(low, "\u00a0"+unitA), "."); ok {
+		decimals = len(behind)
+	}
+	last := math.Pow(10, -float64(decimals))
+	return b-a > 1.01*last || last > 0.011*math.Abs(a)
 }
 
 // explain says how the numbers were made and what they rest on.
@@ -211,9 +263,6 @@ func (s *runSource) explain(v runValue, sheet *paper.Sheet) {
 		}
 	}
 	sheet.Assumption("Ideal solution, well mixed, constant volume: concentrations refer to the volume at the end, and what is dosed adds nothing to it. The mixture has the temperature of the programme throughout.")
-	for _, leg := range (programme{legs: v.Legs}).jumps() {
-		sheet.Assumption(fmt.Sprintf("From leg %d to leg %d the temperature changes at once.", leg, leg+1))
-	}
 	if len(v.Held) > 0 {
 		for _, h := range v.Held {
 			sheet.Assumption(h)
@@ -236,7 +285,10 @@ func (s *runSource) explain(v runValue, sheet *paper.Sheet) {
 	for _, p := range v.Pairs {
 		sure = append(sure, "changeover/"+s.pairName(p))
 	}
-	sheet.Intervals(sure...)
+	sheet.Intervals(slices.DeleteFunc(sure, func(key string) bool {
+		i := sheet.Interval(key)
+		return i != "" && !telling(sheet.Value(key).Text, i)
+	})...)
 }
 
 // exactness says how well the course keeps what must be kept.
@@ -248,7 +300,7 @@ func (v *runValue) exactness() string {
 	case v.Lowest < -v.Floor:
 		text += fmt.Sprintf(" The lowest concentration met is %s.", unit.Print(v.Lowest, molar, unit.FormMolar))
 	case v.Lowest < 0:
-		text += fmt.Sprintf(" No concentration falls below zero by more than %s.", unit.Print(v.Floor, molar, unit.FormMolar))
+		text += fmt.Sprintf(" No concentration falls below zero by more than rounding does (%s M).", unit.Digits(v.Floor, 1))
 	}
 	return text
 }

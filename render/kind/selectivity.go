@@ -4,6 +4,7 @@ import (
 	"context"
 	"fmt"
 	"math"
+	"slices"
 
 	"saddlebook/content/fault"
 	"saddlebook/content/schema"
@@ -21,7 +22,7 @@ func init() {
 		Fields: []schema.Field{
 			{Key: "id", Doc: "the name by which readings and claims call this block", Type: schema.Text, Name: true, Required: true, Example: "limits"},
 			usesMechanism,
-			{Key: "from", Doc: "the species whose fate is followed", Type: schema.Text, Required: true, Wants: "species", Example: "R"},
+			{Key: "from", Doc: "the species whose fate is followed", Type: schema.Text, Default: "with a charge the basis, or else the only charged species that leads to the products", Wants: "species", Example: "R"},
 			{Key: "products", Doc: "the products to compare; a product may be a sum of species", Type: schema.Groups, Required: true, Wants: "species", Example: `["A", "B"]`},
 			atField,
 			chargeField("concentrations of the other species, where they matter", false),
@@ -81,10 +82,14 @@ type limitsValue struct {
 }
 
 func (s *selectivitySource) check() fault.Problems {
-	if len(s.Products) < 2 {
-		return fault.Problems{problem([]string{"products"}, "fewer than two products are listed", "list the products to compare, such as [\"A\", \"B\"]")}
+	ps := distinct("at", s.At)
+	if s.From == "" && len(s.Charge) == 0 {
+		ps = append(ps, problem([]string{"from"}, "no species is named whose fate is followed", "name it, such as from = \"R\", or state a charge"))
 	}
-	return nil
+	if len(s.Products) < 2 {
+		ps = append(ps, problem([]string{"products"}, "fewer than two products are listed", "list the products to compare, such as [\"A\", \"B\"]"))
+	}
+	return ps
 }
 
 // limits computes both limits at every temperature.
@@ -93,20 +98,23 @@ func (s *selectivitySource) limits(m *kinetics.Mechanism) (selectivityValue, err
 	groups, ps := groupsOf(m, s.Products, "products")
 	held, more := concentrations(m, s.Charge, s.Basis)
 	ps = append(ps, more...)
-	from := m.Index(s.From)
-	if from < 0 {
+	if s.From != "" && m.Index(s.From) < 0 {
 		ps = append(ps, unknownSpecies(m, s.From, []string{"from"}))
 	}
 	if len(ps) > 0 {
 		return v, ps
 	}
-	v.From = or(m.Species[from].Label, s.From)
-	for _, g := range s.Products {
-		v.Labels = append(v.Labels, groupLabel(m, g))
-	}
 	var products []int
 	for _, g := range groups {
 		products = append(products, g...)
+	}
+	from, err := s.followed(m, products, held)
+	if err != nil {
+		return v, err
+	}
+	v.From = or(m.Species[from].Label, m.Species[from].Name)
+	for _, g := range s.Products {
+		v.Labels = append(v.Labels, groupLabel(m, g))
 	}
 	for _, T := range atOr(s.At, m) {
 		n, err := m.At(T.SI)
@@ -129,6 +137,35 @@ func (s *selectivitySource) limits(m *kinetics.Mechanism) (selectivityValue, err
 		v.At = append(v.At, row)
 	}
 	return v, nil
+}
+
+// followed is the species whose fate is followed: from, else the basis, else the
+// only charged species that leads to the products.
+func (s *selectivitySource) followed(m *kinetics.Mechanism, products []int, held []float64) (int, error) {
+	if name := or(s.From, s.Basis); name != "" {
+		return m.Index(name), nil
+	}
+	n, err := m.At(atOr(s.At, m)[0].SI)
+	if err != nil {
+		return -1, asProblems(err, "")
+	}
+	var lead []int
+	for i, c := range held {
+		if !(c > 0) || slices.Contains(products, i) {
+			continue
+		}
+		if _, err := n.KineticLimit(kinetics.Limit{From: i, Products: products, Held: held}); err == nil {
+			lead = append(lead, i)
+		}
+	}
+	switch len(lead) {
+	case 0:
+		return -1, fault.Problems{problem([]string{"charge"}, "the products cannot be followed back to one charged species", "name the species whose fate is followed, such as from = \"R\"")}
+	case 1:
+		return lead[0], nil
+	}
+	names := namesOf(m, lead)
+	return -1, fault.Problems{problem([]string{"from"}, fmt.Sprintf("a kinetic limit follows the fate of one species, and %s lead to the products", listWords(names)), fmt.Sprintf("name one of them, such as from = %q", names[0]))}
 }
 
 // start is what is there at the start, for an equilibrium; nil: no charge is stated.

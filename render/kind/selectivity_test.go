@@ -113,3 +113,26 @@ func TestSameAsSharesItsError(t *testing.T) {
 		}
 	}
 }
+
+// Without from, a charge says whose fate is followed: the basis, or the only
+// charged species that leads to the products.
+func TestSelectivityFollowsTheCharge(t *testing.T) {
+	const note = "# T\n\n```toml mechanism\nid = \"m\"\ntemperature = \"25 °C\"\n[species]\nR = { G = 0 }\nX = { G = 0 }\nA = { G = -3 }\nB = { G = -4 }\nZ = { G = 0 }\n" +
+		"[step]\nTSa = { reaction = \"R + X <=> A\", G = 20 }\nTSb = { reaction = \"R + X <=> B\", G = 21 }\n```\n\n```toml selectivity\nid = \"s\"\nmechanism = \"m\"\nproducts = [\"A\", \"B\"]\nLINES\n```\n"
+	want := value(t, good(t, strings.Replace(note, "LINES", `from = "R"`, 1), nil), "s/kinetic/A")
+	for _, lines := range []string{"basis = \"R\"\ncharge = { R = \"1 M\", X = \"2 equiv\", Z = \"1 M\" }", "charge = { R = \"1 M\", Z = \"1 M\" }"} {
+		near(t, lines, value(t, good(t, strings.Replace(note, "LINES", lines, 1), nil), "s/kinetic/A"), want, 1e-14)
+	}
+	for lines, want := range map[string]string{
+		"":                                  `selectivity "s", from: no species is named whose fate is followed; name it, such as from = "R", or state a charge`,
+		`charge = { R = "1 M", X = "1 M" }`: `from: a kinetic limit follows the fate of one species, and R and X lead to the products; name one of them, such as from = "R"`,
+		`charge = { Z = "1 M" }`:            "charge: the products cannot be followed back to one charged species; name the species whose fate is followed",
+	} {
+		_, faults := evaluate(t, strings.Replace(note, "LINES", lines, 1), nil)
+		var b strings.Builder
+		faults.Write(&b)
+		if !strings.Contains(b.String(), want) {
+			t.Errorf("%q: got %q, want %q in it", lines, b.String(), want)
+		}
+	}
+}

@@ -84,6 +84,10 @@ func (t *tableSource) read(in Inputs, energies string) ([]tableRow, fault.Proble
 		at(line, first, "semicolons stand between the cells", "write commas there, and points in numbers")
 		return nil, problems
 	}
+	if len(head) == 1 && strings.Contains(head[0], "\t") {
+		at(line, first, "tabs stand between the cells", "write commas there")
+		return nil, problems
+	}
 	index := map[string]int{}
 	var columns []string
 	for i, h := range head {

@@ -6,6 +6,10 @@ import "saddlebook/kinetics/unit"
 var (
 	plain   = unit.Unit{Scale: 1} // a number without a unit
 	percent = unit.Must("%")
+
+	kcalPerMol = unit.Must("kcal/mol")
+	kJPerMol   = unit.Must("kJ/mol")
+
 	molar   = unit.Must("M")
 	seconds = unit.Must("s")
 	celsius = unit.Must("°C")
@@ -18,3 +22,16 @@ var (
 		-2: unit.Must("M-2"), -1: unit.Must("M-1"), 0: plain, 1: molar, 2: unit.Must("M2"),
 	}
 )
+
+// energyUnits returns the unit that differences of energy are printed in where a
+// mechanism gives its energies in the given unit, and the unit beside it. Hartree
+// are too large for differences.
+func energyUnits(given string) (first, beside unit.Unit) {
+	switch given {
+	case "", "kcal/mol", "Eh":
+		return kcalPerMol, kJPerMol
+	case "kJ/mol":
+		return kJPerMol, kcalPerMol
+	}
+	return unit.Must(given, unit.MolarEnergy), kJPerMol
+}

@@ -1,6 +1,9 @@
 package kind
 
 import (
+	"fmt"
+
+	"saddlebook/content/fault"
 	"saddlebook/content/schema"
 	"saddlebook/kinetics"
 	"saddlebook/kinetics/unit"
@@ -25,6 +28,42 @@ func atOr(at []unit.Quantity, m *kinetics.Mechanism) []unit.Quantity {
 		return at
 	}
 	return []unit.Quantity{{SI: m.Temperature, Unit: celsius}}
+}
+
+// exactly refuses a ± that nothing would carry on; nil is nothing.
+func exactly(path []string, q *unit.Quantity) fault.Problems {
+	if q == nil || q.SD == 0 {
+		return nil
+	}
+	return fault.Problems{problem(path, fmt.Sprintf("the ± of %q is not carried on", *q), "leave out the ±")}
+}
+
+// temperature refuses one with a ± and one at which nothing moves; nil is
+// nothing.
+func temperature(path []string, q *unit.Quantity) fault.Problems {
+	ps := exactly(path, q)
+	if q != nil && q.Unit.Symbol != "" && !(q.SI > 0) {
+		ps = append(ps, problem(path, fmt.Sprintf("at %q nothing moves", *q), "write a temperature above absolute zero"))
+	}
+	return ps
+}
+
+// distinct refuses a temperature that has a ± or stands in the list twice,
+// whatever its unit.
+func distinct(key string, list []unit.Quantity) fault.Problems {
+	var ps fault.Problems
+	seen := map[string]unit.Quantity{}
+	for i, q := range list {
+		path := []string{key, fmt.Sprint(i + 1)}
+		ps = append(ps, temperature(path, &q)...)
+		at := canonicalCondition(ConditionText(q))
+		if other, twice := seen[at]; twice {
+			ps = append(ps, problem(path, fmt.Sprintf("%q is the same temperature as %q", q, other), "list each temperature once"))
+			continue
+		}
+		seen[at] = q
+	}
+	return ps
 }
 
 func kelvins(at []unit.Quantity) []float64 {
