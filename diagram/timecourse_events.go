@@ -103,9 +103,8 @@ func (l *courseLayout) stack(flags []flag) bool {
 	end := l.c.Width - margin
 	for i := range flags {
 		f := &flags[i]
-		_, to := f.box()
 		f.right = true
-		if _, to = f.box(); to <= end {
+		if _, to := f.box(); to <= end {
 			continue
 		}
 		f.right = false

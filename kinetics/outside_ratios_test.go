@@ -244,10 +244,7 @@ func TestOutsideGasReactions(t *testing.T) {
 	for _, text := range []string{
 		"N2O + NO2 <=> 3 NO", "CH4 + CO2 <=> 2 HCHO", "C2H4 + H2O <=> CH4 + HCHO", "C2H2 + H2O <=> CH4 + CO", "HCN + H2O <=> NH3 + CO",
 	} {
-		var names []string
-		for _, s := range []string{"HCHO", "CH4", "C2H4", "C2H2", "HCN", "CO2", "CO", "NH3", "H2O", "N2O", "NO", "NO2"} {
-			names = append(names, s)
-		}
+		names := []string{"HCHO", "CH4", "C2H4", "C2H2", "HCN", "CO2", "CO", "NH3", "H2O", "N2O", "NO", "NO2"}
 		from, to, returns, err := kinetics.ParseReaction(text, names)
 		if err != nil {
 			t.Fatal(err)

@@ -13,9 +13,6 @@ func (p Point) length() float64 { return math.Hypot(p.X, p.Y) }
 
 func dot(p, q Point) float64 { return p.X*q.X + p.Y*q.Y }
 
-// cross is above 0 where q lies to the right of p, seen on the page.
-func cross(p, q Point) float64 { return p.X*q.Y - p.Y*q.X }
-
 // toSegment is the distance of a point from a segment.
 func toSegment(o, p, q Point) float64 {
 	d := q.minus(p)

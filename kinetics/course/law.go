@@ -51,8 +51,7 @@ func roughness(n *kinetics.Network) float64 {
 // constants are nearly straight. It is taken only if its last terms have come
 // down to the rounding of the logarithms themselves.
 type table struct {
-	mid, half float64 // of 1/T
-	terms     int
+	mid, half float64     // of 1/T
 	value     [][]float64 // by column; nil: −Inf throughout
 	slope     [][]float64 // of the derivative by (1/T − mid)/half
 }
