@@ -74,6 +74,10 @@
 //
 // # Limits
 //
+// Where an exchange is fast, the amounts in it come from sums: they are good to
+// rounding of the largest member of the sum. A catalyst at 1e-11 of its substrate
+// so has six digits, at 1e-6 all that the tolerance asks for.
+//
 // Well mixed, constant volume, mass action in whole orders up to MaxOrder; a
 // reaction may not use up what is not in its rate. Two crossings of an event
 // within a quarter of a step cancel unseen; an event that only touches zero, or
