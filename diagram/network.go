@@ -107,7 +107,7 @@ func network(n Network, marks []Mark, width float64) Scene {
 	width = math.Ceil(math.Max(n.Width, width))
 	dx := (width - all.X0 - all.X1) / 2
 	return Scene{ID: n.ID, Title: n.Title, Desc: n.Desc, Width: width,
-		Height: math.Ceil(all.Y1 - all.Y0 + 2*margin), Marks: shift(marks, dx, margin-all.Y0)}
+		Height: math.Ceil(all.Y1 - all.Y0 + 2*margin), Marks: moved(marks, dx, margin-all.Y0)}
 }
 
 func (d NetworkNode) key() string   { return firstOf(d.Name, d.Label) }

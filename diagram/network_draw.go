@@ -59,7 +59,7 @@ func (p *netPlan) draw() ([]Mark, float64) {
 	if len(key) > 0 {
 		k := bounds(key)
 		middle := (all.X0 + all.X1 - k.X0 - k.X1) / 2
-		marks = append(marks, shift(key, middle, 0)...)
+		marks = append(marks, moved(key, middle, 0)...)
 	}
 	all = bounds(marks)
 	return marks, all.X1 - all.X0 + 2*margin

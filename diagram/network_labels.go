@@ -153,7 +153,7 @@ func (n Network) key(full, width, y float64) []Mark {
 		if x > 0 && x+w > width {
 			x, y = 0, y+rowHeight+2
 		}
-		marks = append(marks, shift([]Mark{it.sample}, x, y+line/2)...)
+		marks = append(marks, moved([]Mark{it.sample}, x, y+line/2)...)
 		write("aside", it.text, 33)
 		x += w + 18
 	}

@@ -235,6 +235,3 @@ func pictureFault(q ProfilePoint, width float64) error {
 	}
 	return nil
 }
-
-// shift moves marks.
-func shift(marks []Mark, dx, dy float64) []Mark { return moved(marks, dx, dy) }

@@ -50,7 +50,7 @@ func moleculeFields() []schema.Field {
 }
 
 var lowModesField = schema.Field{Key: "low-modes", Doc: "how vibrations of low frequency count towards the entropy", Type: schema.Table, Default: "harmonic", Fields: []schema.Field{
-	{Key: "treatment", Doc: "harmonic; floor: modes below count as if at it; free rotor: below, the entropy turns into that of a free rotor (Grimme 2012)", Type: schema.Text, OneOf: []string{string(thermo.Harmonic), string(thermo.Floor), string(thermo.FreeRotor)}, Required: true, Example: "free rotor"},
+	{Key: "treatment", Doc: "harmonic; floor: modes below count as if at it, in heat and entropy but not in the zero point; free rotor: below, the entropy turns into that of a free rotor (Grimme 2012)", Type: schema.Text, OneOf: []string{string(thermo.Harmonic), string(thermo.Floor), string(thermo.FreeRotor)}, Required: true, Example: "free rotor"},
 	{Key: "below", Doc: "the wavenumber of the floor, or at which oscillator and rotor count alike", Type: schema.Amount, Dims: []unit.Dim{unit.Wavenumber}, Bare: "cm-1", Default: "100 cm-1", Example: "100 cm-1"},
 	{Key: "exponent", Doc: "how sharply oscillator turns into free rotor", Type: schema.Real, Default: "4"},
 	{Key: "moment", Doc: "mean moment of inertia of the free rotors", Type: schema.Amount, Dims: []unit.Dim{unit.Inertia}, Default: "1e-44 kg m2", Example: "1e-44 kg m2"},
